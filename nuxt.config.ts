@@ -1,0 +1,33 @@
+export default defineNuxtConfig({
+  compatibilityDate: '2026-06-01',
+  // Everything lives at the top level: a folder named app/ would become the source folder of Nuxt 4.
+  srcDir: '.',
+  modules: ['@pinia/nuxt', '@nuxtjs/tailwindcss', 'nuxt-auth-utils'],
+  components: [{ path: '~/components', pathPrefix: false }],
+  imports: { dirs: ['stores', 'composables'] },
+  css: ['~/assets/theme.css'],
+  devtools: { enabled: false },
+  telemetry: false,
+  tailwindcss: { cssPath: '~/assets/tailwind.css', viewer: false },
+  typescript: { strict: true, typeCheck: false },
+  router: { options: { sensitive: true } },
+  experimental: { payloadExtraction: false },
+  app: {
+    head: {
+      htmlAttrs: { lang: 'en' },
+      title: 'Polewright',
+      meta: [
+        { name: 'viewport', content: 'width=device-width, initial-scale=1' },
+        { name: 'description', content: 'The bench on which controls engineers of motion axes choose loop gains.' },
+      ],
+    },
+  },
+  runtimeConfig: {
+    databasePath: '.data/polewright.db',
+    rateLimits: 'on',
+    public: { siteUrl: '' },
+  },
+  nitro: {
+    experimental: { asyncContext: false },
+  },
+})

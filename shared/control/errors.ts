@@ -1,0 +1,15 @@
+/** The input itself is wrong (400): names the field of the request body that must change. */
+export class InvalidInputError extends Error {
+  constructor(readonly path: string, message: string, readonly position?: number) {
+    super(message)
+    this.name = 'InvalidInputError'
+  }
+}
+
+/** The input is well-formed but the mathematics has no answer (422): one sentence says why. */
+export class NoAnswerError extends Error {
+  constructor(message: string, readonly path?: string) {
+    super(message)
+    this.name = 'NoAnswerError'
+  }
+}

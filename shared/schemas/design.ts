@@ -1,0 +1,67 @@
+import { z } from 'zod'
+import { complexSchema, finiteNumber } from './complex'
+import { limits } from './limits'
+import { controllerSchema, loopSchema } from './loop'
+
+export const dampingRatioSchema = z.number().gt(0, 'the damping ratio is greater than 0').max(1, 'the damping ratio is at most 1')
+
+export const designPointSchema = z.union([
+  complexSchema.refine(point => point.im >= 0, { path: ['im'], message: 'a design point has im >= 0; its conjugate is implied' }),
+  z.strictObject({
+    dampingRatio: z.number().gt(-1, 'the damping ratio is greater than -1').max(1, 'the damping ratio is at most 1'),
+    naturalFrequency: z.number().positive(),
+  }),
+])
+
+export const readingNames = [
+  'overshootPercent', 'settlingTime', 'riseTime', 'peakTime', 'peakEffort', 'steadyStateErrorStep', 'steadyStateErrorRamp',
+  'gainMarginDb', 'phaseMarginDeg', 'delayMargin', 'sensitivityPeak', 'bandwidth', 'dampingRatio',
+] as const
+
+export const requirementSchema = z.strictObject({
+  reading: z.enum(readingNames),
+  limit: z.enum(['at-most', 'at-least']),
+  value: finiteNumber,
+})
+
+export const requirementsSchema = z.array(requirementSchema).max(limits.requirements, `at most ${limits.requirements} requirements`)
+
+export const gainsSchema = z.union([
+  z.strictObject({ k: finiteNumber }),
+  z.strictObject({ kp: finiteNumber, kd: finiteNumber }),
+  z.strictObject({ kp: finiteNumber, ki: finiteNumber }),
+  z.strictObject({ kp: finiteNumber, kr: finiteNumber }),
+  z.strictObject({ k: finiteNumber, zero: finiteNumber, pole: finiteNumber }),
+])
+
+export const responseOptionsSchema = z.strictObject({
+  input: z.enum(['reference-step', 'reference-ramp', 'disturbance-step']).optional(),
+  amplitude: finiteNumber.refine(amplitude => amplitude !== 0, 'the amplitude is not zero').optional(),
+  duration: z.number().positive().optional(),
+  samples: z.number().int().min(limits.samples.least).max(limits.samples.most).optional(),
+  settlingBandPercent: z.number().gt(0).lt(100).optional(),
+})
+
+export const analyzeBodySchema = z.strictObject({
+  loop: loopSchema,
+  controller: controllerSchema,
+  dampingRatio: dampingRatioSchema.optional(),
+  gains: gainsSchema.optional(),
+})
+
+/** Exactly one of designPoint and gains says where the design stands. */
+export const solveBodySchema = z.strictObject({
+  loop: loopSchema,
+  controller: controllerSchema,
+  designPoint: designPointSchema.optional(),
+  gains: gainsSchema.optional(),
+  requirements: requirementsSchema.default([]),
+  response: responseOptionsSchema.optional(),
+}).refine(body => (body.designPoint === undefined) !== (body.gains === undefined), {
+  path: ['designPoint'], message: 'give either designPoint or gains',
+})
+
+export type DesignPointInput = z.infer<typeof designPointSchema>
+export type RequirementInput = z.infer<typeof requirementSchema>
+export type AnalyzeBody = z.infer<typeof analyzeBodySchema>
+export type SolveBody = z.infer<typeof solveBodySchema>

@@ -1,0 +1,23 @@
+/** Limits that form, client, route and column share. Each is written here once and nowhere else. */
+export const limits = {
+  plantOrder: 20,
+  totalOrder: 40,
+  expressionLength: 500,
+  expressionDepth: 40,
+  parameters: 24,
+  parameterName: 32,
+  parameterUnit: 32,
+  requirements: 16,
+  samples: { least: 20, most: 2000, usual: 400 },
+  title: 120,
+  name: 80,
+  machine: 80,
+  axis: 80,
+  notes: 10_000,
+  comment: 4_000,
+  search: 120,
+  pageSize: { usual: 20, most: 100 },
+  email: 254,
+  password: { least: 8, most: 128 },
+  bodyBytes: 256 * 1024,
+} as const

@@ -1,0 +1,78 @@
+import { z } from 'zod'
+import { complexSchema, finiteNumber } from './complex'
+import { limits } from './limits'
+
+const order = limits.plantOrder
+const coefficients = (what: string) =>
+  z.array(finiteNumber).min(1, `${what} needs at least one coefficient`).max(order + 1, `${what} may have order ${order} at most`)
+
+export const parameterSchema = z.strictObject({
+  value: finiteNumber,
+  unit: z.string().max(limits.parameterUnit).optional(),
+  tolerancePercent: z.number().min(0).max(100).optional(),
+})
+
+/** A name that the formula may use: a letter, then letters, digits or underscores; s is the Laplace variable. */
+export const parameterNameSchema = z.string()
+  .max(limits.parameterName)
+  .regex(/^\p{L}[\p{L}\p{N}_]*$/u, 'a parameter name is a letter followed by letters, digits or underscores')
+  .refine(name => name !== 's', 's is the Laplace variable and cannot be a parameter')
+
+export const plantSchema = z.discriminatedUnion('form', [
+  z.strictObject({
+    form: z.literal('expression'),
+    expression: z.string().trim().min(1, 'type the formula of the plant').max(limits.expressionLength),
+    parameters: z.record(parameterNameSchema, parameterSchema)
+      .refine(parameters => Object.keys(parameters).length <= limits.parameters, `at most ${limits.parameters} parameters`)
+      .default({}),
+  }),
+  z.strictObject({
+    form: z.literal('coefficients'),
+    numerator: coefficients('the numerator'),
+    denominator: coefficients('the denominator'),
+  }),
+  z.strictObject({
+    form: z.literal('zeros-poles-gain'),
+    zeros: z.array(complexSchema).max(order),
+    poles: z.array(complexSchema).max(order),
+    gain: finiteNumber,
+  }),
+])
+
+const transferFunctionSchema = z.strictObject({
+  numerator: coefficients('the numerator'),
+  denominator: coefficients('the denominator'),
+})
+
+/** Fields that the contract names and this version does not compute yet are accepted here and refused with a 422 by the loop resolver. */
+export const loopSchema = z.strictObject({
+  plant: plantSchema,
+  sensor: plantSchema.optional(),
+  rateFeedback: finiteNumber.optional(),
+  deadTime: z.number().min(0).optional(),
+  actuatorLimit: z.number().positive().optional(),
+  samplePeriod: z.number().positive().optional(),
+})
+
+export const controllerSchema = z.discriminatedUnion('form', [
+  z.strictObject({ form: z.literal('gain'), shape: transferFunctionSchema.optional() }),
+  z.strictObject({ form: z.literal('pd') }),
+  z.strictObject({ form: z.literal('pi') }),
+  z.strictObject({ form: z.literal('rate') }),
+  z.strictObject({
+    form: z.literal('pid'),
+    integralToDerivativeRatio: z.number().positive().optional(),
+    thirdPole: finiteNumber.optional(),
+  }),
+  z.strictObject({ form: z.literal('lead'), poleZeroRatio: z.number().gt(1, 'the pole-zero ratio of a lead is greater than 1') }),
+  z.strictObject({
+    form: z.literal('lag'),
+    poleZeroRatio: z.number().gt(0).lt(1, 'the pole-zero ratio of a lag lies between 0 and 1'),
+    zero: z.number().lt(0, 'the zero of a lag is negative'),
+  }),
+])
+
+export type Parameter = z.infer<typeof parameterSchema>
+export type Plant = z.infer<typeof plantSchema>
+export type Loop = z.infer<typeof loopSchema>
+export type ControllerForm = z.infer<typeof controllerSchema>

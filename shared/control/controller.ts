@@ -1,0 +1,129 @@
+import * as polynomial from '../numerics/polynomial'
+import { InvalidInputError, NoAnswerError } from './errors'
+import { relativeDegree, series } from './transfer-function'
+import type { Controller, Gains, LoopModel, TransferFunction } from './types'
+
+/** Everything that answers to reference r, disturbance d at the plant input and the loop broken at the plant input. */
+export interface LoopFunctions {
+  /** L: the loop transfer, controller times plant; for the rate form G (kp + kr s). */
+  loop: TransferFunction
+  /** r to y. */
+  reference: TransferFunction
+  /** r to the controller output; improper where a derivative acts on the reference. */
+  effort: TransferFunction
+  /** d to y. */
+  disturbance: TransferFunction
+  /** r to r - y. */
+  error: TransferFunction
+  /** The closed loop's denominator, not normalised; its roots are the closed-loop poles. */
+  characteristic: number[]
+}
+
+/** u = (feedforward r - feedback y) / denominator; the two differ for rate feedback alone. */
+interface ControllerPolynomials {
+  feedforward: number[]
+  feedback: number[]
+  denominator: number[]
+}
+
+const gainNames: Record<Controller['form'], readonly string[]> = {
+  gain: ['k'], pd: ['kp', 'kd'], pi: ['kp', 'ki'], rate: ['kp', 'kr'], lead: ['k', 'zero', 'pole'],
+}
+
+/** The plant as the controller sees it: an inner rate feedback turns N/D into N/(D + kr s N). */
+export function effectivePlant({ plant, rateFeedback }: LoopModel): TransferFunction {
+  if (rateFeedback === 0) return { numerator: polynomial.trim(plant.numerator), denominator: polynomial.trim(plant.denominator) }
+  const damping = polynomial.multiplyByPower(polynomial.scale(plant.numerator, rateFeedback), 1)
+  const denominator = polynomial.add(plant.denominator, damping)
+  if (polynomial.degree(denominator) < Math.max(polynomial.degree(plant.denominator), polynomial.degree(damping))) {
+    throw new NoAnswerError('the inner rate feedback makes an algebraic loop: the highest power of s cancels', 'loop.rateFeedback')
+  }
+  return { numerator: polynomial.trim(plant.numerator), denominator }
+}
+
+/**
+ * All transfer functions of the loop at given gains.
+ * @throws InvalidInputError where the gains are not those of the form
+ * @throws NoAnswerError for an algebraic loop (1 + L = 0 at infinity) and for a loop with more zeros than poles
+ */
+export function loopFunctions(model: LoopModel, controller: Controller, gains: Gains): LoopFunctions {
+  const plant = effectivePlant(model)
+  const { feedforward, feedback, denominator } = controllerPolynomials(controller, gains)
+  const loop = { numerator: polynomial.multiply(feedback, plant.numerator), denominator: polynomial.multiply(denominator, plant.denominator) }
+  refuseImproper(loop)
+  const characteristic = polynomial.add(loop.denominator, loop.numerator)
+  if (polynomial.degree(characteristic) < polynomial.degree(loop.denominator)) {
+    throw new NoAnswerError('the loop is algebraic: 1 + L(s) vanishes as s grows, so no output is defined at these gains')
+  }
+  const through = polynomial.multiply(feedforward, plant.numerator)
+  const over = (numerator: number[]) => ({ numerator, denominator: characteristic })
+  return {
+    loop,
+    reference: over(through),
+    effort: over(polynomial.multiply(feedforward, plant.denominator)),
+    disturbance: over(polynomial.multiply(denominator, plant.numerator)),
+    error: over(polynomial.add(loop.denominator, polynomial.subtract(loop.numerator, through))),
+    characteristic,
+  }
+}
+
+/**
+ * L0: the loop transfer without its overall gain, so that L = overallGain L0.
+ * @param gains needed by every form but `gain`. For forms with one k it is taken out; for pd, pi and rate the gains stay inside as they are, so
+ *   that the overall gain is a factor on both, 1 at the present design.
+ */
+export function openLoop(model: LoopModel, controller: Controller, gains?: Gains): TransferFunction {
+  if (gains === undefined && controller.form !== 'gain') {
+    throw new NoAnswerError(`the ${controller.form} form has several gains: give the present ones, the analysis runs along their overall factor`, 'gains')
+  }
+  const unit: Gains = gains === undefined || controller.form === 'gain' ? { k: 1 } : 'k' in gains ? { ...gains, k: 1 } : gains
+  const { feedback, denominator } = controllerPolynomials(controller, unit)
+  const loop = series({ numerator: feedback, denominator }, effectivePlant(model))
+  if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to analyse', 'gains')
+  refuseImproper(loop)
+  return loop
+}
+
+/** The K of L = K L0: k where the form has one, else 1 (the present gains are inside L0). */
+export function overallGain(gains: Gains): number {
+  return 'k' in gains ? gains.k : 1
+}
+
+function controllerPolynomials(controller: Controller, gains: Gains): ControllerPolynomials {
+  const names = gainNames[controller.form]
+  if (Object.keys(gains).length !== names.length || !names.every(name => name in gains)) {
+    throw new InvalidInputError('gains', `the ${controller.form} form has the gains ${names.join(', ')}`)
+  }
+  // The check above ties the gains to the form; the compiler cannot see it.
+  const given = gains as unknown as Record<string, number>
+  const { k = 0, kp = 0, kd = 0, ki = 0, kr = 0, zero = 0, pole = 0 } = given
+  const both = (numerator: number[], denominator: number[]) => {
+    const trimmed = polynomial.trim(numerator)
+    return { feedforward: trimmed, feedback: trimmed, denominator }
+  }
+  switch (controller.form) {
+    case 'gain': {
+      const shape = controllerShape(controller)
+      return both(polynomial.scale(shape.numerator, k), shape.denominator)
+    }
+    case 'pd': return both([kd, kp], [1])
+    // Without an integral gain there is no integrator; keeping s/s would show a closed-loop pole at 0 that nothing drives.
+    case 'pi': return ki === 0 ? both([kp], [1]) : both([kp, ki], [1, 0])
+    case 'lead': return both([k, -k * zero], [1, -pole])
+    case 'rate': return { feedforward: [kp], feedback: polynomial.trim([kr, kp]), denominator: [1] }
+  }
+}
+
+/** C0 of the `gain` form; 1 where none is given. */
+export function controllerShape(controller: { shape?: TransferFunction }): TransferFunction {
+  const { numerator, denominator } = controller.shape ?? { numerator: [1], denominator: [1] }
+  if (polynomial.isZero(numerator)) throw new InvalidInputError('controller.shape.numerator', 'the numerator of the controller shape is zero')
+  if (polynomial.isZero(denominator)) throw new InvalidInputError('controller.shape.denominator', 'the denominator of the controller shape is zero')
+  return { numerator: polynomial.trim(numerator), denominator: polynomial.trim(denominator) }
+}
+
+function refuseImproper(loop: TransferFunction): void {
+  if (!polynomial.isZero(loop.numerator) && relativeDegree(loop) < 0) {
+    throw new NoAnswerError('the loop has more zeros than poles: the controller differentiates more than the plant smooths')
+  }
+}

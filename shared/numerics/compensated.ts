@@ -1,3 +1,5 @@
+import type { Complex } from './complex'
+
 /**
  * Polynomial evaluation as if in twice the working precision: compensated Horner on error-free transformations.
  * S. Graillat, P. Langlois, N. Louvet, "Compensated Horner scheme" (2005); T. J. Dekker, "A floating-point technique for extending the
@@ -60,4 +62,12 @@ export function evaluateComplexCompensated(p: ArrayLike<number>, x: number, y: n
   }
   out[0] = re + errorRe
   out[1] = im + errorIm
+}
+
+/** p(s) for a complex s, good to the last digits also close to a root. */
+export function evaluateAccurately(p: ArrayLike<number>, s: Complex): Complex {
+  if (p.length === 0) return { re: 0, im: 0 }
+  const out = new Float64Array(2)
+  evaluateComplexCompensated(p, s.re, s.im, out)
+  return { re: out[0]!, im: out[1]! }
 }

@@ -1,3 +1,7 @@
+import { fileURLToPath } from 'node:url'
+
+const apiErrorHandler = fileURLToPath(new URL('./server/error-handler.ts', import.meta.url))
+
 export default defineNuxtConfig({
   compatibilityDate: '2026-06-01',
   // Everything lives at the top level: a folder named app/ would become the source folder of Nuxt 4.
@@ -26,6 +30,12 @@ export default defineNuxtConfig({
     databasePath: '.data/polewright.db',
     rateLimits: 'on',
     public: { siteUrl: '' },
+  },
+  hooks: {
+    // Before Nuxt's own error page: failures under /api answer in the form of the contract.
+    'nitro:init': (nitro) => {
+      nitro.options.errorHandler = [apiErrorHandler, ...[nitro.options.errorHandler].flat()]
+    },
   },
   nitro: {
     experimental: { asyncContext: false },

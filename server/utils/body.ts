@@ -1,0 +1,49 @@
+import type { H3Event } from 'h3'
+import type { z } from 'zod'
+import { limits } from '#shared/schemas/limits'
+import { badRequest, failure } from './errors'
+import { issuesOf } from './issues'
+
+/** The JSON body of a request, read up to the size cap and held against its schema; every fault is listed. */
+export async function readValidated<S extends z.ZodType>(event: H3Event, schema: S): Promise<z.output<S>> {
+  const type = getRequestHeader(event, 'content-type')?.split(';')[0]?.trim().toLowerCase()
+  if (type !== 'application/json') throw failure(415, 'Send the body as application/json.')
+  return validate(parseJson(await readCapped(event, limits.bodyBytes)), schema)
+}
+
+/** The query string, held against its schema. */
+export function queryValidated<S extends z.ZodType>(event: H3Event, schema: S): z.output<S> {
+  return validate(getQuery(event), schema)
+}
+
+function validate<S extends z.ZodType>(input: unknown, schema: S): z.output<S> {
+  const result = schema.safeParse(input, { reportInput: true })
+  if (!result.success) throw badRequest(issuesOf(result.error))
+  return result.data
+}
+
+/** The body as text. Declared or streamed, no more than `most` bytes are ever kept. */
+async function readCapped(event: H3Event, most: number): Promise<string> {
+  const tooLarge = () => failure(413, `The body is larger than ${Math.floor(most / 1024)} KiB.`)
+  if (Number(getRequestHeader(event, 'content-length') ?? 0) > most) throw tooLarge()
+  const chunks: Buffer[] = []
+  let size = 0
+  for await (const chunk of event.node.req as AsyncIterable<Buffer>) {
+    size += chunk.length
+    if (size > most) throw tooLarge()
+    chunks.push(chunk)
+  }
+  return Buffer.concat(chunks).toString('utf8')
+}
+
+function parseJson(text: string): unknown {
+  if (text.trim() === '') throw badRequest([{ path: '', message: 'The body is empty; a JSON object is needed.' }])
+  try {
+    return JSON.parse(text, (key, value) => {
+      if (key === '__proto__') throw new SyntaxError('__proto__ is no field')
+      return value
+    })
+  } catch (error) {
+    throw badRequest([{ path: '', message: `The body is not JSON: ${(error as Error).message}.` }])
+  }
+}

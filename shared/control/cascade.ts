@@ -1,0 +1,226 @@
+import type { Complex } from '../numerics/complex'
+import { applyMatrix, matrixExponential } from '../numerics/matrix-exponential'
+import { leading, rootsAtOrigin, type Polynomial } from '../numerics/polynomial'
+import { isImpulsive, polesAtOrigin, remainingPolynomial, type Transform } from './modal-sum'
+import { largestSample, type Trajectory } from './trajectory'
+
+/**
+ * The inverse transform by the exponential of a matrix: the poles as a chain of first- and second-order sections, driven by an impulse. Repeated
+ * and nearly repeated poles need no special care here; the entries of the exponential are divided differences of e^(pt) over the poles
+ * (G. Opitz, "Steigungsmatrizen", 1964), which do not cancel.
+ */
+
+/** One section: g/(s - p) for a real pole, w^2/(s^2 - 2 re s + w^2) for a pair; g = |p| or, at the origin, the `pace` of the others. */
+interface Section { pole: Complex, gain: number }
+
+interface Realisation {
+  /** n*n entries, row after row. */
+  matrix: Float64Array
+  start: Float64Array
+  output: Float64Array
+}
+
+/** Turn of the fastest living pole during one step of the table, radians. */
+const stepAngle = 0.4
+/** A walk over the table has at most this many steps at one step length; a lightly damped signal beyond it is walked in longer steps. */
+const stepsPerLength = 4000
+const frozen = 1e250
+
+export function cascade(transform: Transform): Trajectory {
+  const system = realise(transform)
+  const remains = remainingPolynomial(transform)
+  const decays = transform.poles.every(pole => pole.re < 0 || (pole.re === 0 && pole.im === 0))
+  const steady = (t: number) => remains.reduceRight((value, coefficient) => value * t + coefficient, 0)
+  const table = decays ? new Table(system, transform.poles, steady) : null
+  const outputSlope = applyTransposed(system.matrix, system.output)
+  const steadySlope = (t: number) => remains.reduceRight((value, coefficient, power) => power === 0 ? value : value * t + power * coefficient, 0)
+  const stateAt = (t: number) => table?.stateAt(t) ?? applyMatrix(scaledExponential(system.matrix, t), system.start)
+  return {
+    remains,
+    decays,
+    impulsive: isImpulsive(transform),
+    transient: t => dot(system.output, stateAt(t)) - steady(t),
+    slope: t => dot(outputSlope, stateAt(t)) - steadySlope(t),
+    envelope: t => table?.envelope(t) ?? Infinity,
+    next: t => table!.next(t),
+    previous: t => table!.previous(t),
+    sample(dt, count) {
+      // Beyond the table only the remainder is left; short of it the state is carried on from step to step.
+      const moving = table ? Math.min(count, Math.ceil(table.end / dt) + 1) : count
+      const samples = sampleStates(system, dt, moving)
+      while (samples.length < count) samples.push(steady(samples.length * dt))
+      return samples
+    },
+  }
+}
+
+/** States on a grid whose step doubles as the fast poles die out. */
+class Table {
+  private readonly times: number[] = [0]
+  private readonly states: Float64Array[]
+  /** From here on the transient has died out. */
+  readonly end: number
+  /** Largest |transient| from each instant on. */
+  private readonly suffix: Float64Array
+
+  constructor(private readonly system: Realisation, poles: readonly Complex[], steady: (t: number) => number) {
+    const moving = poles.filter(pole => pole.re < 0)
+    // A pole of multiplicity m decays as t^m e^(re t): allow for the power.
+    const life = (pole: Complex) => (36 + 4 * moving.length) / -pole.re
+    this.end = Math.max(0, ...moving.map(life))
+    this.states = [system.start]
+    let exponent = NaN
+    let propagator: Float64Array | null = null
+    let stepsLeft = stepsPerLength
+    for (let t = 0; t < this.end;) {
+      const fastest = Math.max(...moving.filter(pole => t < life(pole)).map(pole => Math.hypot(pole.re, pole.im)))
+      let wanted = Math.floor(Math.log2(stepAngle / fastest))
+      if (stepsLeft === 0) wanted = exponent + 1
+      if (!(wanted <= exponent)) {
+        exponent = wanted
+        propagator = scaledExponential(system.matrix, 2 ** exponent)
+        stepsLeft = stepsPerLength
+      }
+      t += 2 ** exponent
+      stepsLeft--
+      this.times.push(t)
+      this.states.push(applyMatrix(propagator!, this.states[this.states.length - 1]!))
+    }
+    this.suffix = new Float64Array(this.times.length)
+    for (let k = this.times.length - 1, largest = 0; k >= 0; k--) {
+      largest = Math.max(largest, Math.abs(dot(system.output, this.states[k]!) - steady(this.times[k]!)))
+      this.suffix[k] = largest
+    }
+  }
+
+  stateAt(t: number): Float64Array {
+    const k = this.indexAt(t)
+    const rest = t - this.times[k]!
+    return rest === 0 ? this.states[k]! : applyMatrix(scaledExponential(this.system.matrix, rest), this.states[k]!)
+  }
+
+  /** Between two instants of the grid the signal passes the larger of them by far less than a tenth. */
+  envelope(t: number): number {
+    const k = this.indexAt(t)
+    return k === this.times.length - 1 ? 0 : 1.1 * this.suffix[k]!
+  }
+
+  next(t: number): number {
+    return this.times[this.indexAt(t) + 1] ?? Infinity
+  }
+
+  previous(t: number): number {
+    const k = this.indexAt(t)
+    return this.times[this.times[k] === t ? Math.max(0, k - 1) : k]!
+  }
+
+  private indexAt(t: number): number {
+    let low = 0
+    let high = this.times.length
+    while (high - low > 1) {
+      const middle = (low + high) >> 1
+      if (this.times[middle]! <= t) low = middle
+      else high = middle
+    }
+    return low
+  }
+}
+
+function realise(transform: Transform): Realisation {
+  const { sections, numerator } = chain(transform)
+  const n = sections.reduce((sum, section) => sum + (section.pole.im === 0 ? 1 : 2), 0)
+  const matrix = new Float64Array(n * n)
+  const start = new Float64Array(n)
+  const first: number[] = []
+  let row = 0
+  sections.forEach(({ pole, gain }, i) => {
+    first.push(row)
+    const input = i === 0 ? -1 : first[i - 1]!
+    const driven = pole.im === 0 ? row : row + 1
+    if (pole.im === 0) matrix[row * n + row] = pole.re
+    else {
+      matrix[row * n + row + 1] = gain
+      matrix[(row + 1) * n + row] = -gain
+      matrix[(row + 1) * n + row + 1] = 2 * pole.re
+    }
+    if (input < 0) start[driven] = gain
+    else matrix[driven * n + input] = gain
+    row = driven + 1
+  })
+  return { matrix, start, output: outputRow(sections, first, numerator, n) }
+}
+
+/** Sections, the fastest first, and the numerator over a monic denominator. */
+function chain(transform: Transform): { sections: Section[], numerator: number[] } {
+  const stripped = transform.numerator.slice(0, transform.numerator.length - rootsAtOrigin(transform.numerator))
+  const atOrigin = polesAtOrigin(transform)
+  const poles = transform.poles.filter(pole => pole.im > 0 || (pole.im === 0 && pole.re !== 0))
+  const sizes = poles.map(pole => Math.hypot(pole.re, pole.im))
+  const pace = sizes.length > 0 ? Math.min(...sizes) : 1
+  const sections = poles.map((pole, i) => ({ pole, gain: sizes[i]! })).sort((a, b) => b.gain - a.gain)
+  for (let i = 0; i < atOrigin; i++) sections.push({ pole: { re: 0, im: 0 }, gain: pace })
+  const lead = leading(transform.denominator)
+  return { sections, numerator: [...stripped.map(c => c / lead), ...new Array<number>(Math.max(0, -atOrigin)).fill(0)] }
+}
+
+/** Weights of the states: remainders of the numerator's repeated division by the sections, the last one first. The quotient left over is impulses. */
+function outputRow(sections: Section[], first: number[], numerator: number[], n: number): Float64Array {
+  const output = new Float64Array(n)
+  let rest: Polynomial = numerator
+  const gains: number[] = []
+  sections.reduce((total, { pole, gain }, i) => gains[i] = total * (pole.im === 0 ? gain : gain * gain), 1)
+  for (let i = sections.length - 1; i >= 0; i--) {
+    const { pole, gain } = sections[i]!
+    const row = first[i]!
+    if (pole.im === 0) {
+      const { quotient, remainder } = divideBy(rest, [-pole.re])
+      output[row] = remainder[0]! / gains[i]!
+      rest = quotient
+    }
+    else {
+      const { quotient, remainder } = divideBy(rest, [-2 * pole.re, gain * gain])
+      output[row] = remainder[1]! / gains[i]!
+      output[row + 1] = remainder[0]! * gain / gains[i]!
+      rest = quotient
+    }
+  }
+  return output
+}
+
+/** Division by a monic polynomial given without its leading 1; the remainder has as many coefficients as `tail`. */
+function divideBy(p: Polynomial, tail: readonly number[]): { quotient: number[], remainder: number[] } {
+  const work = [...p]
+  const quotientLength = Math.max(0, work.length - tail.length)
+  for (let i = 0; i < quotientLength; i++) tail.forEach((coefficient, k) => work[i + 1 + k]! -= coefficient * work[i]!)
+  const remainder = work.slice(quotientLength)
+  return { quotient: work.slice(0, quotientLength), remainder: [...new Array<number>(tail.length - remainder.length).fill(0), ...remainder] }
+}
+
+function scaledExponential(matrix: Float64Array, t: number): Float64Array {
+  return matrixExponential(matrix.map(entry => entry * t), Math.round(Math.sqrt(matrix.length)))
+}
+
+function sampleStates(system: Realisation, dt: number, count: number): number[] {
+  const propagator = scaledExponential(system.matrix, dt)
+  let state = system.start
+  let value = 0
+  return Array.from({ length: count }, (_, k) => {
+    if (k > 0 && Math.abs(value) < frozen) state = applyMatrix(propagator, state)
+    const next = dot(system.output, state)
+    if (Number.isFinite(next)) value = Math.max(-largestSample, Math.min(largestSample, next))
+    return value
+  })
+}
+
+function dot(a: Float64Array, b: Float64Array): number {
+  let sum = 0
+  for (let i = 0; i < a.length; i++) sum += a[i]! * b[i]!
+  return sum
+}
+
+function applyTransposed(matrix: Float64Array, row: Float64Array): Float64Array {
+  const n = row.length
+  const result = new Float64Array(n)
+  for (let i = 0; i < n; i++) for (let j = 0; j < n; j++) result[j]! += row[i]! * matrix[i * n + j]!
+  return result
+}

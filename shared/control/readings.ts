@@ -1,0 +1,43 @@
+import type { Complex } from '../numerics/complex'
+import { bandwidth } from './bandwidth'
+import type { LoopFunctions } from './controller'
+import { margins } from './margins'
+import type { LoopResponse } from './response'
+import { sensitivityPeak } from './sensitivity'
+import { stationaryError } from './steady-state'
+import { stepFigures } from './step-figures'
+import { largestSize } from './trajectory'
+import type { Readings } from './types'
+
+export interface ReadingOptions {
+  /** Height of the reference step; scales final value, effort and steady-state errors. */
+  amplitude: number
+  settlingBandPercent: number
+}
+
+/**
+ * Every reading of the closed loop, by the definitions of `Readings`' fields; null where a figure does not exist. In an unstable loop the figures of
+ * the response and the bandwidth do not, while margins and sensitivity peak, which are figures of the loop transfer, do.
+ * @param step output and effort after a unit reference step
+ */
+export function readAll(functions: LoopFunctions, poles: readonly Complex[], stable: boolean, step: LoopResponse, options: ReadingOptions): Readings {
+  const ofLoop = { ...margins(functions.loop, stable), sensitivityPeak: sensitivityPeak(functions.loop, poles) }
+  if (!stable) {
+    return {
+      finalValue: null, overshootPercent: null, peakTime: null, riseTime: null, settlingTime: null,
+      steadyStateErrorStep: null, steadyStateErrorRamp: null, peakEffort: null, ...ofLoop, bandwidth: null,
+    }
+  }
+  const { amplitude, settlingBandPercent } = options
+  const scaled = (value: number | null) => value === null ? null : value * amplitude + 0
+  const figures = stepFigures(step.output, settlingBandPercent)
+  return {
+    ...figures,
+    finalValue: scaled(figures.finalValue),
+    steadyStateErrorStep: scaled(stationaryError(functions.error, 1)),
+    steadyStateErrorRamp: scaled(stationaryError(functions.error, 2)),
+    peakEffort: step.effort.impulsive ? null : largestSize(step.effort) * Math.abs(amplitude),
+    ...ofLoop,
+    bandwidth: bandwidth(functions.reference),
+  }
+}

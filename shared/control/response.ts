@@ -1,0 +1,53 @@
+import type { Complex } from '../numerics/complex'
+import { scale } from '../numerics/polynomial'
+import { cascade } from './cascade'
+import type { LoopFunctions } from './controller'
+import { chooseDuration } from './duration'
+import { modalSum } from './modal-sum'
+import { largestSample, type Trajectory } from './trajectory'
+import type { DesignSolution, ResponseInput, ResponseOptions, TransferFunction } from './types'
+
+/** Samples of a response where the caller names no number; the same as the limit of the HTTP contract's usual one. */
+export const usualSamples = 400
+
+/** How often the input is integrated from an impulse: step 1, ramp 2. */
+const integrations: Record<ResponseInput, number> = { 'reference-step': 1, 'reference-ramp': 2, 'disturbance-step': 1 }
+
+/**
+ * The exact response of a rational transfer function to a unit step (integrators 1) or a unit ramp (2) from rest: a sum of modes where they
+ * are well separated, the exponential of a matrix where they are not.
+ * @param poles the roots of the denominator
+ */
+export function respond(g: TransferFunction, poles: readonly Complex[], integrators: number): Trajectory {
+  const transform = { ...g, poles, integrators }
+  return modalSum(transform) ?? cascade(transform)
+}
+
+/** Output and controller output of the closed loop after one input of size 1. */
+export interface LoopResponse { output: Trajectory, effort: Trajectory }
+
+/** The loop's answer to an input; the disturbance enters at the plant input. */
+export function respondTo(input: ResponseInput, functions: LoopFunctions, poles: readonly Complex[]): LoopResponse {
+  const { loop, reference, effort, disturbance, characteristic } = functions
+  const [toOutput, toEffort] = input === 'disturbance-step'
+    ? [disturbance, { numerator: scale(loop.numerator, -1), denominator: characteristic }]
+    : [reference, effort]
+  return { output: respond(toOutput, poles, integrations[input]), effort: respond(toEffort, poles, integrations[input]) }
+}
+
+/**
+ * Equally spaced samples of a response from 0 to its duration, ends included; finite numbers even where the loop is unstable. An impulse in the
+ * effort (a derivative acting on a step) is left out: the samples are the regular part.
+ */
+export function sampleResponse(response: LoopResponse, poles: readonly Complex[], options: ResponseOptions): DesignSolution['response'] {
+  const { input = 'reference-step', amplitude = 1, samples = usualSamples } = options
+  const duration = options.duration ?? chooseDuration(response.output, poles)
+  const dt = duration / (samples - 1)
+  const scaled = (values: number[]) => values.map(value => Math.max(-largestSample, Math.min(largestSample, amplitude * value)) + 0)
+  return {
+    input,
+    time: Array.from({ length: samples }, (_, k) => k === samples - 1 ? duration : k * dt),
+    output: scaled(response.output.sample(dt, samples)),
+    effort: scaled(response.effort.sample(dt, samples)),
+  }
+}

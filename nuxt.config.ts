@@ -1,5 +1,7 @@
 import { fileURLToPath } from 'node:url'
+import { readMigrationFiles } from 'drizzle-orm/migrator'
 
+const migrationsFolder = fileURLToPath(new URL('./server/database/migrations', import.meta.url))
 const apiErrorHandler = fileURLToPath(new URL('./server/error-handler.ts', import.meta.url))
 
 export default defineNuxtConfig({
@@ -26,7 +28,10 @@ export default defineNuxtConfig({
       ],
     },
   },
+  // The session store of this application answers who is signed in; the module's own client fetch is not needed.
+  auth: { loadStrategy: 'none', hash: { scrypt: { cost: 16384, blockSize: 8, parallelization: 5, maxMemory: 64 * 1024 * 1024 } } },
   runtimeConfig: {
+    session: { name: 'polewright', password: '', maxAge: 60 * 60 * 24 * 30, cookie: { sameSite: 'lax', secure: false } },
     databasePath: '.data/polewright.db',
     rateLimits: 'on',
     public: { siteUrl: '' },
@@ -38,6 +43,6 @@ export default defineNuxtConfig({
     },
   },
   nitro: {
-    experimental: { asyncContext: false },
+    virtual: { '#migrations': () => `export default ${JSON.stringify(readMigrationFiles({ migrationsFolder }))}` },
   },
 })

@@ -92,6 +92,27 @@ export function multiply(p: Polynomial, q: Polynomial): number[] {
   return trim(product)
 }
 
+/**
+ * a b - c d, with coefficients that are nothing but rounding made exactly 0: leading ones would otherwise come back as roots far out that
+ * do not exist.
+ */
+export function productDifference(a: Polynomial, b: Polynomial, c: Polynomial, d: Polynomial): number[] {
+  const length = Math.max(a.length + b.length, c.length + d.length) - 1
+  const sum = new Array<number>(length).fill(0)
+  const size = new Array<number>(length).fill(0)
+  const accumulate = (p: Polynomial, q: Polynomial, sign: number) => {
+    const offset = length - (p.length + q.length - 1)
+    p.forEach((x, i) => q.forEach((y, j) => {
+      sum[offset + i + j]! += sign * x * y
+      size[offset + i + j]! += Math.abs(x * y)
+    }))
+  }
+  accumulate(a, b, 1)
+  accumulate(c, d, -1)
+  const noise = 4 * length * 2 ** -53
+  return trim(sum.map((value, i) => Math.abs(value) <= noise * size[i]! ? 0 : value))
+}
+
 /** p times a real number. */
 export function scale(p: Polynomial, factor: number): number[] {
   return trim(p.map(coefficient => coefficient * factor))
@@ -136,9 +157,11 @@ export function alongRay(p: Polynomial, direction: Complex): { re: number[], im:
   const re = new Array<number>(p.length).fill(0)
   const im = new Array<number>(p.length).fill(0)
   let power: Complex = { re: 1, im: 0 }
+  // A part of e^{j k angle} that is rounding alone is 0: as a leading coefficient it would make a root far out.
+  const clean = (part: number, k: number) => Math.abs(part) <= 4 * k * 2 ** -53 ? 0 : part
   for (let k = 0; k <= n; k++) {
-    re[n - k] = p[n - k]! * power.re
-    im[n - k] = p[n - k]! * power.im
+    re[n - k] = p[n - k]! * clean(power.re, k)
+    im[n - k] = p[n - k]! * clean(power.im, k)
     power = {
       re: power.re * direction.re - power.im * direction.im,
       im: power.re * direction.im + power.im * direction.re,
@@ -150,4 +173,10 @@ export function alongRay(p: Polynomial, direction: Complex): { re: number[], im:
 /** p(j w) = re(w) + j im(w) as two real polynomials in w; `re` holds even powers only, `im` odd ones. Exact. */
 export function alongImaginaryAxis(p: Polynomial): { re: number[], im: number[] } {
   return alongRay(p, { re: 0, im: 1 })
+}
+
+/** Sum of all roots, from the two leading coefficients; 0 for a constant. */
+export function sumOfRoots(p: Polynomial): number {
+  const [first = 1, second = 0] = trim(p)
+  return -second / first
 }

@@ -1,0 +1,64 @@
+import type { Complex } from '../../numerics/complex'
+import { distance } from '../../numerics/complex'
+import { gatherRepeated, repeat, type RepeatedRoot } from '../../numerics/multiple-roots'
+import * as polynomial from '../../numerics/polynomial'
+import { roots } from '../../numerics/roots'
+import type { TransferFunction } from '../types'
+
+/** L0 = gain prod(s - zeros)/prod(s - poles), beside its coefficients. */
+export interface FactoredLoop extends TransferFunction {
+  /** Ratio of the leading coefficients, with its sign. */
+  gain: number
+  /** With repetitions; repeated roots are exactly equal. */
+  poles: Complex[]
+  zeros: Complex[]
+  distinctPoles: RepeatedRoot[]
+  distinctZeros: RepeatedRoot[]
+}
+
+/** A pole and a zero this close (relative to their size) cancel: no branch between them could be told from a point. */
+const cancellationWidth = 1e-9
+
+/** Poles, zeros and gain of L0. */
+export function factor({ numerator, denominator }: TransferFunction): FactoredLoop {
+  const distinctPoles = gatherRepeated(denominator, roots(denominator))
+  const distinctZeros = gatherRepeated(numerator, roots(numerator))
+  return {
+    numerator,
+    denominator,
+    gain: polynomial.leading(numerator) / polynomial.leading(denominator),
+    poles: repeat(distinctPoles),
+    zeros: repeat(distinctZeros),
+    distinctPoles,
+    distinctZeros,
+  }
+}
+
+/**
+ * The loop without poles that a zero takes away. Such a pole is a closed-loop root at every gain: it belongs to the locus as a point and would
+ * only blur the conditions for the rest.
+ */
+export function cancelCommon(loop: FactoredLoop): { loop: FactoredLoop, cancelled: Complex[] } {
+  const zeros = [...loop.zeros]
+  const cancelled: Complex[] = []
+  const poles = loop.poles.filter((pole) => {
+    const width = cancellationWidth * Math.hypot(pole.re, pole.im)
+    const i = zeros.findIndex(zero => distance(zero, pole) <= width)
+    if (i < 0) return true
+    zeros.splice(i, 1)
+    cancelled.push(pole)
+    return false
+  })
+  if (cancelled.length === 0) return { loop, cancelled }
+  const reduced = factor({
+    numerator: polynomial.fromRoots(symmetric(zeros), polynomial.leading(loop.numerator)),
+    denominator: polynomial.fromRoots(symmetric(poles), polynomial.leading(loop.denominator)),
+  })
+  return { loop: reduced, cancelled }
+}
+
+/** Removing one of two nearly equal places may part exact mirrors by a last digit; the upper ones decide. */
+function symmetric(places: Complex[]): Complex[] {
+  return places.filter(place => place.im >= 0)
+    .flatMap(place => place.im === 0 ? [place] : [place, { re: place.re, im: -place.im }])
+}

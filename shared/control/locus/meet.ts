@@ -1,0 +1,99 @@
+import * as complex from '../../numerics/complex'
+import type { Complex } from '../../numerics/complex'
+import * as polynomial from '../../numerics/polynomial'
+import { roots } from '../../numerics/roots'
+import type { FactoredLoop } from './factored-loop'
+import { farGainStep, gainStepOf, type FarStation, type Launched, type Station } from './launch'
+import { march, type Branch, type Mover } from './march'
+import { refine, type ScaledLoop } from './scaled-loop'
+import type { Node } from './trace-branches'
+
+/**
+ * Carries the roots up to a meeting and onto it.
+ * @param room the last piece begins no further than this below the node's gain
+ * @returns where all roots stand at the node's gain; the node is recorded in every branch
+ */
+export function meet(scaled: ScaledLoop, loop: FactoredLoop, { movers, k }: Launched, node: Node, room: number): Station[] {
+  const bystanders = rootsBeside(scaled, loop, node)
+  const before = Math.min(room, ...node.meetings.map(({ place, multiplicity }) => {
+    const mirror = place.im > 0 ? [complex.conjugate(place)] : []
+    const others = node.meetings.filter(other => other.place !== place).map(other => other.place)
+    return gainStepOf(scaled, node.k, { place, count: multiplicity }, [...bystanders, ...mirror, ...others])
+  }))
+  const rest = march(scaled, movers, k, Math.max(node.k - before, k))
+  const stations: Station[] = node.meetings.map(({ place, multiplicity }) => gather(rest, place, multiplicity))
+  for (const mover of rest) stations.push(passBy(scaled, mover, node.k))
+  for (const station of stations) touch(station, node.k)
+  return stations
+}
+
+/**
+ * Carries the roots up to the gain at which one (or more) passes through infinity, and the others past it. The branches that go out end;
+ * new ones are begun for the far side.
+ */
+export function passInfinity(scaled: ScaledLoop, loop: FactoredLoop, { movers, k }: Launched, node: Node, room: number, branches: Branch[]):
+{ stations: Station[], far: FarStation } {
+  const far = farStationOf(scaled, loop)
+  const rest = march(scaled, movers, k, node.k - Math.min(room, farGainStep(far)))
+  rest.sort((a, b) => Math.hypot(b.re, b.im) - Math.hypot(a.re, a.im))
+  for (let gone = 0; gone < far.count && rest.length > 0;) gone += rest.shift()!.mirror === null ? 1 : 2
+  branches.push(...far.branches)
+  const stations = rest.map(mover => passBy(scaled, mover, node.k))
+  for (const station of stations) touch(station, node.k)
+  return { stations, far }
+}
+
+/** D - (d/n) N loses `count` powers of s; the first one left tells how fast the roots come in from infinity. */
+function farStationOf(scaled: ScaledLoop, { numerator, denominator }: FactoredLoop): FarStation {
+  const n = polynomial.leading(numerator)
+  const d = polynomial.leading(denominator)
+  const left = polynomial.productDifference(denominator, [n], numerator, [d])
+  const count = polynomial.degree(denominator) - polynomial.degree(left)
+  return {
+    coefficient: polynomial.leading(left) / n / d / scaled.extent ** count,
+    count,
+    branches: Array.from({ length: count }, () => ({ points: [] })),
+  }
+}
+
+/** The closed-loop roots at a node's gain that take no part in its meetings, in scaled units. */
+function rootsBeside(scaled: ScaledLoop, { numerator, denominator }: FactoredLoop, node: Node): Complex[] {
+  const all = roots(polynomial.combine(1, denominator, node.k * scaled.gainUnit, numerator))
+    .map(root => complex.scale(root, 1 / scaled.extent))
+  for (const { place, multiplicity } of node.meetings) {
+    for (const meeting of place.im > 0 ? [place, complex.conjugate(place)] : [place]) {
+      all.sort((a, b) => complex.distance(a, meeting) - complex.distance(b, meeting))
+      all.splice(0, multiplicity)
+    }
+  }
+  return all
+}
+
+/** Takes the movers that come to a meeting (the nearest ones) out of the list. */
+function gather(movers: Mover[], place: Complex, count: number): Station {
+  const station: Station = { place, count, branches: [], mirrors: [] }
+  movers.sort((a, b) => Math.hypot(a.re - place.re, a.im - place.im) - Math.hypot(b.re - place.re, b.im - place.im))
+  for (let i = 0; i < movers.length && station.branches.length < count;) {
+    const { branch, mirror } = movers[i]!
+    const taken = mirror === null || place.im > 0 ? 1 : 2
+    if (station.branches.length + taken > count || (mirror === null && place.im > 0)) {
+      i++
+      continue
+    }
+    station.branches.push(branch)
+    if (mirror !== null) (place.im > 0 ? station.mirrors : station.branches).push(mirror)
+    movers.splice(i, 1)
+  }
+  return station
+}
+
+/** A root that takes no part: at the node's gain it is a station of its own. */
+function passBy(scaled: ScaledLoop, mover: Mover, k: number): Station {
+  const root = refine(scaled, k, mover.re, mover.im, mover.mirror === null) ?? mover
+  return { place: { re: root.re, im: root.im }, count: 1, branches: [mover.branch], mirrors: mover.mirror === null ? [] : [mover.mirror] }
+}
+
+function touch({ place, branches, mirrors }: Station, k: number): void {
+  for (const branch of branches) branch.points.push({ re: place.re, im: place.im, k })
+  for (const branch of mirrors) branch.points.push({ re: place.re, im: -place.im, k })
+}

@@ -1,0 +1,103 @@
+import * as complex from '../../numerics/complex'
+import type { RepeatedRoot } from '../../numerics/multiple-roots'
+import type { LoopAnalysis } from '../types'
+import type { Breakaway } from './breakaways'
+import type { FactoredLoop } from './factored-loop'
+import { launch, type FarStation, type Station } from './launch'
+import { march, record, type Branch } from './march'
+import { meet, passInfinity } from './meet'
+import { scaleLoop, type ScaledLoop } from './scaled-loop'
+import { thin } from './thin'
+
+/** Branches to infinity are followed to this many extents of the figure. */
+const outward = 8
+/** Branches to a zero are followed to this distance from it, in extents. */
+const arrived = 1e-4
+/** Meetings whose gains differ by less than this (relative) happen at one node. */
+const sameGain = 1e-9
+/** Share of the way between two nodes that the first piece out of a node may take. */
+const firstShare = 0.3
+
+/** A gain (scaled) at which roots meet, or at which a root passes through infinity. */
+export interface Node {
+  k: number
+  /** Places on or above the real axis. */
+  meetings: RepeatedRoot[]
+  throughInfinity: boolean
+}
+
+/**
+ * The branches of the root locus, continuous in the gain from the open-loop poles to zeros or out along the asymptotes.
+ *
+ * The gains at which roots meet are known exactly (breakaways). Between two of them roots are simple and keep apart, so they are carried by prediction and
+ * Newton correction under step control; at a meeting branches end and start on the exact point, along the directions of its local expansion. Where a root of
+ * a biproper loop passes through infinity its branch ends, and another begins on the far side.
+ *
+ * @param loop without common poles and zeros
+ * @param meetings all breakaways of the loop
+ * @param beyond the last gain recorded lies well above these
+ * @param extent size of the figure (rad/s)
+ * @returns points [re, im, gain], the gain rising from 0
+ */
+export function traceBranches(loop: FactoredLoop, meetings: Breakaway[], beyond: number[], extent: number): LoopAnalysis['branches'] {
+  const scaled = scaleLoop(loop, extent)
+  const nodes = nodesOf(scaled, meetings)
+  const branches: Branch[] = []
+  let stations = startAtPoles(loop, extent, branches)
+  let far: FarStation | null = null
+  let k0 = 0
+  for (const node of nodes) {
+    const room = firstShare * (node.k - k0)
+    const launched = launch(scaled, k0, stations, far, room)
+    record(launched.movers, launched.k)
+    if (node.throughInfinity) ({ stations, far } = passInfinity(scaled, loop, launched, node, room, branches))
+    else ({ stations, far } = { stations: meet(scaled, loop, launched, node, room), far: null })
+    k0 = node.k
+  }
+  const end = lastGain(scaled, [...nodes.map(node => node.k), ...beyond.map(gain => gain / scaled.gainUnit)])
+  const launched = launch(scaled, k0, stations, far, firstShare * (end - k0))
+  record(launched.movers, launched.k)
+  march(scaled, launched.movers, launched.k, end)
+  return branches.map(branch => ({
+    points: thin(branch.points, outward)
+      .map(({ re, im, k }): [number, number, number] => [re * extent + 0, im * extent + 0, k * scaled.gainUnit]),
+  }))
+}
+
+function startAtPoles(loop: FactoredLoop, extent: number, branches: Branch[]): Station[] {
+  return loop.distinctPoles.filter(({ place }) => place.im >= 0).map(({ place, multiplicity }) => {
+    const at = complex.scale(place, 1 / extent)
+    const open = (im: number): Branch => ({ points: [{ re: at.re, im, k: 0 }] })
+    const own = Array.from({ length: multiplicity }, () => open(at.im))
+    const mirrors = at.im > 0 ? own.map(() => open(-at.im)) : []
+    branches.push(...own, ...mirrors)
+    return { place: at, count: multiplicity, branches: own, mirrors }
+  })
+}
+
+function nodesOf(scaled: ScaledLoop, meetings: Breakaway[]): Node[] {
+  const nodes: Node[] = []
+  if (scaled.poles.length === scaled.zeros.length && scaled.sign < 0) nodes.push({ k: 1, meetings: [], throughInfinity: true })
+  for (const { point, gain, meeting } of meetings) {
+    if (point.im < 0) continue
+    const k = gain / scaled.gainUnit
+    const place = complex.scale(point, 1 / scaled.extent)
+    const node = nodes.find(other => Math.abs(other.k - k) <= sameGain * k)
+    if (node === undefined) nodes.push({ k, meetings: [{ place, multiplicity: meeting }], throughInfinity: false })
+    else node.meetings.push({ place, multiplicity: meeting })
+  }
+  return nodes.sort((a, b) => a.k - b.k)
+}
+
+/** Far enough for every branch to have gone out or come to its zero, and well above every gain that matters. */
+function lastGain({ poles, zeros }: ScaledLoop, others: number[]): number {
+  const asymptotes = poles.length - zeros.length
+  const gains = others.map(k => 4 * k)
+  if (asymptotes > 0) gains.push((2 * outward) ** asymptotes)
+  for (const zero of zeros) {
+    const same = zeros.filter(other => other.re === zero.re && other.im === zero.im).length
+    const reachOf = (places: complex.Complex[]) => places.reduce((product, place) => product * (complex.distance(place, zero) || 1), 1)
+    gains.push(reachOf(poles) / reachOf(zeros) / arrived ** same)
+  }
+  return Math.min(Math.max(1, ...gains), 1e200)
+}

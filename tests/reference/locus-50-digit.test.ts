@@ -1,0 +1,54 @@
+/**
+ * The locus of one-gain loops against the 50-digit cases (made with mpmath by the definitions of the design's method; seeded random loops).
+ */
+import { describe, expect, it } from 'vitest'
+import { analyzeLoop } from '#shared/control/analyze'
+import cases from '../fixtures/loops-50-digit.json'
+
+const relativeTolerance = 1e-10
+
+function expectClose(found: number, wanted: number): void {
+  expect(Math.abs(found - wanted)).toBeLessThanOrEqual(relativeTolerance * Math.abs(wanted))
+}
+
+describe.each(cases.oneGain.map((c, i) => ({ ...c, name: `${i} ${c.kind}` })))('locus $name', (c) => {
+  const analysis = analyzeLoop({ plant: c.plant, rateFeedback: 0 }, { form: 'gain', shape: c.shape }, { dampingRatio: c.dampingRatio })
+
+  it('meets the ray in the same places', () => {
+    const found = analysis.rayIntersections!
+    const wanted = [...c.rayIntersections].sort((a, b) => b.point.re - a.point.re)
+    expect(found).toHaveLength(wanted.length)
+    wanted.forEach(({ point, gain }, i) => {
+      expectClose(found[i]!.gain, gain)
+      expectClose(found[i]!.point.re, point.re)
+      expectClose(found[i]!.point.im, point.im)
+    })
+  })
+
+  it('crosses the imaginary axis at the same frequencies and gains', () => {
+    const found = analysis.imaginaryAxisCrossings.filter(({ frequency }) => frequency > 0)
+    expect(found).toHaveLength(c.imaginaryAxisCrossings.length)
+    c.imaginaryAxisCrossings.forEach(({ frequency, gain }, i) => {
+      expectClose(found[i]!.frequency, frequency)
+      expectClose(found[i]!.gain, gain)
+    })
+  })
+
+  it('breaks away from the real axis in the same places', () => {
+    const found = analysis.breakaways.filter(({ point }) => point.im === 0).sort((a, b) => a.point.re - b.point.re)
+    expect(found).toHaveLength(c.breakaways.length)
+    c.breakaways.forEach(({ point, gain }, i) => {
+      expectClose(found[i]!.point.re, point)
+      expectClose(found[i]!.gain, gain)
+    })
+  })
+
+  it('has the same centroid of asymptotes', () => {
+    expectClose(analysis.asymptotes!.centroid, c.centroid)
+  })
+
+  it('is stable at the gain of the case exactly where all its roots lie left of the axis', () => {
+    const inside = analysis.stableGain.some(([from, to]) => c.gain > from && (to === null || c.gain < to))
+    expect(inside).toBe(c.closedLoopPoles.every(root => root.re < 0))
+  })
+})

@@ -34,6 +34,7 @@ export default defineNuxtConfig({
     session: { name: 'polewright', password: '', maxAge: 60 * 60 * 24 * 30, cookie: { sameSite: 'lax', secure: false } },
     databasePath: '.data/polewright.db',
     rateLimits: 'on',
+    trustProxy: false,
     public: { siteUrl: '' },
   },
   hooks: {

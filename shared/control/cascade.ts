@@ -2,7 +2,7 @@ import type { Complex } from '../numerics/complex'
 import { applyMatrix, matrixExponential } from '../numerics/matrix-exponential'
 import { leading, rootsAtOrigin, type Polynomial } from '../numerics/polynomial'
 import { isImpulsive, polesAtOrigin, remainingPolynomial, type Transform } from './modal-sum'
-import { largestSample, type Trajectory } from './trajectory'
+import { polynomialAt, type Instant, type Trajectory } from './trajectory'
 
 /**
  * The inverse transform by the exponential of a matrix: the poles as a chain of first- and second-order sections, driven by an impulse. Repeated
@@ -30,19 +30,22 @@ export function cascade(transform: Transform): Trajectory {
   const system = realise(transform)
   const remains = remainingPolynomial(transform)
   const decays = transform.poles.every(pole => pole.re < 0 || (pole.re === 0 && pole.im === 0))
-  const steady = (t: number) => remains.reduceRight((value, coefficient) => value * t + coefficient, 0)
-  const table = decays ? new Table(system, transform.poles, steady) : null
-  const outputSlope = applyTransposed(system.matrix, system.output)
-  const steadySlope = (t: number) => remains.reduceRight((value, coefficient, power) => power === 0 ? value : value * t + power * coefficient, 0)
+  const steady = (t: number) => polynomialAt(remains, t)
+    const outputSlope = applyTransposed(system.matrix, system.output)
+  const remainsSlope = remains.slice(1).map((coefficient, i) => (i + 1) * coefficient)
+  const steadySlope = (t: number) => polynomialAt(remainsSlope, t)
+  const transientOf = (state: Float64Array, t: number) => dot(system.output, state) - steady(t)
+  const slopeOf = (state: Float64Array, t: number) => dot(outputSlope, state) - steadySlope(t)
+  const table = decays ? new Table(system, transform.poles, transientOf, slopeOf) : null
   const stateAt = (t: number) => table?.stateAt(t) ?? applyMatrix(scaledExponential(system.matrix, t), system.start)
   return {
     remains,
     decays,
     impulsive: isImpulsive(transform),
-    transient: t => dot(system.output, stateAt(t)) - steady(t),
-    slope: t => dot(outputSlope, stateAt(t)) - steadySlope(t),
+    transient: t => transientOf(stateAt(t), t),
+    slope: t => slopeOf(stateAt(t), t),
     envelope: t => table?.envelope(t) ?? Infinity,
-    next: t => table!.next(t),
+    instant: k => table!.instant(k),
     previous: t => table!.previous(t),
     sample(dt, count) {
       // Beyond the table only the remainder is left; short of it the state is carried on from step to step.
@@ -63,7 +66,12 @@ class Table {
   /** Largest |transient| from each instant on. */
   private readonly suffix: Float64Array
 
-  constructor(private readonly system: Realisation, poles: readonly Complex[], steady: (t: number) => number) {
+  constructor(
+    private readonly system: Realisation,
+    poles: readonly Complex[],
+    private readonly transientOf: (state: Float64Array, t: number) => number,
+    private readonly slopeOf: (state: Float64Array, t: number) => number,
+  ) {
     const moving = poles.filter(pole => pole.re < 0)
     // A pole of multiplicity m decays as t^m e^(re t): allow for the power.
     const life = (pole: Complex) => (36 + 4 * moving.length) / -pole.re
@@ -88,7 +96,7 @@ class Table {
     }
     this.suffix = new Float64Array(this.times.length)
     for (let k = this.times.length - 1, largest = 0; k >= 0; k--) {
-      largest = Math.max(largest, Math.abs(dot(system.output, this.states[k]!) - steady(this.times[k]!)))
+      largest = Math.max(largest, Math.abs(transientOf(this.states[k]!, this.times[k]!)))
       this.suffix[k] = largest
     }
   }
@@ -105,8 +113,11 @@ class Table {
     return k === this.times.length - 1 ? 0 : 1.1 * this.suffix[k]!
   }
 
-  next(t: number): number {
-    return this.times[this.indexAt(t) + 1] ?? Infinity
+  instant(k: number): Instant | null {
+    const time = this.times[k]
+    const state = this.states[k]
+    if (time === undefined || state === undefined) return null
+    return { time, value: this.transientOf(state, time), slope: this.slopeOf(state, time), envelope: 1.1 * this.suffix[k]! }
   }
 
   previous(t: number): number {
@@ -207,7 +218,7 @@ function sampleStates(system: Realisation, dt: number, count: number): number[] 
   return Array.from({ length: count }, (_, k) => {
     if (k > 0 && Math.abs(value) < frozen) state = applyMatrix(propagator, state)
     const next = dot(system.output, state)
-    if (Number.isFinite(next)) value = Math.max(-largestSample, Math.min(largestSample, next))
+    if (Number.isFinite(next)) value = next
     return value
   })
 }

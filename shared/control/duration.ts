@@ -1,12 +1,12 @@
 import type { Complex } from '../numerics/complex'
-import { highest, lastOutside, type Trajectory } from './trajectory'
+import { lastOutside, type Trajectory } from './trajectory'
 
 /** Room after the response has settled, so that the eye sees it has. */
 const roomAfterSettling = 1.4
 /** A tail is shown for at most this many times the time that the main movement (down to 10 %) takes: it must not squash the picture. */
 const longestTail = 6
 /** More cycles than this cannot be told apart on a screen. */
-const mostCycles = 40
+const mostCycles = 25
 /** An unstable response is shown while it grows e^5 = 150-fold. */
 const growthTimes = 5
 const niceSteps = [1, 1.2, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10]
@@ -45,10 +45,11 @@ function growthView(poles: readonly Complex[]): number {
   return 10 * 2 * Math.PI / Math.max(...poles.filter(pole => pole.re === 0).map(pole => pole.im))
 }
 
+/** To a few percent, which is enough to choose a time axis. */
 function largestTransient(y: Trajectory): number {
-  const floor = 1e-12 * y.envelope(0)
-  if (!(floor > 0)) return 0
-  return Math.max(highest(y, 1, floor)?.value ?? 0, highest(y, -1, floor)?.value ?? 0)
+  let largest = 0
+  for (let k = 0, here = y.instant(0); here !== null && here.envelope > largest; here = y.instant(++k)) largest = Math.max(largest, Math.abs(here.value))
+  return largest
 }
 
 /** The next of a few round numbers. */

@@ -71,7 +71,7 @@ function phaseMargins(loop: TransferFunction, unit: number, stable: boolean): Pi
     const frequency = refine(start, w => ({ value: Math.log(abs(atFrequency(loop, w))), slope: -logarithmicSlope(loop, w).im }))
     return frequency === null ? [] : [{ frequency, margin: wrapAngle(arg(atFrequency(loop, frequency)) + Math.PI) }]
   })
-  const smallest = crossings.reduce<typeof crossings[number] | null>((least, next) => least && Math.abs(least.margin) <= Math.abs(next.margin) ? least : next, null)
+  const smallest = crossings.sort((a, b) => Math.abs(a.margin) - Math.abs(b.margin))[0] ?? null
   return {
     phaseMarginDeg: smallest && toDegrees(smallest.margin),
     gainCrossover: smallest && smallest.frequency * unit,

@@ -1,7 +1,7 @@
 import type { Complex } from '../numerics/complex'
 import { evaluateComplexCompensated } from '../numerics/compensated'
 import { degree, derivative, evaluateComplex, leading, rootsAtOrigin, type Polynomial } from '../numerics/polynomial'
-import { largestSample, type Trajectory } from './trajectory'
+import { polynomialAt, type Instant, type Trajectory } from './trajectory'
 
 /** A Laplace transform N(s) / (D(s) s^integrators) of which the roots of D are known. */
 export interface Transform {
@@ -124,8 +124,7 @@ function signalSize(modes: Modes, remains: number[]): number {
   let largest = Math.abs(remains[0]!)
   for (let i = 0; i < modes.sigma.length; i++) {
     const t = 1 / Math.hypot(modes.sigma[i]!, modes.omega[i]!)
-    const remaining = remains.reduceRight((value, coefficient) => value * t + coefficient, 0)
-    largest = Math.max(largest, Math.abs(sumAt(modes, t) + remaining))
+    largest = Math.max(largest, Math.abs(sumAt(modes, t) + polynomialAt(remains, t)))
   }
   return largest
 }
@@ -141,51 +140,129 @@ function sumAt({ sigma, omega, re, im }: Modes, t: number): number {
 
 function trajectoryOf(modes: Modes, remains: number[], impulsive: boolean, reference: number): Trajectory {
   const { sigma, omega, re, im } = modes
-  const count = sigma.length
   const decays = sigma.every(rate => rate < 0)
-  const size = sigma.map((_, i) => Math.hypot(re[i]!, im[i]!))
-  const speed = sigma.map((rate, i) => Math.hypot(rate, omega[i]!))
-  // Modes weigh on the step of a walk until they are extinct.
-  const diesAt = sigma.map((rate, i) => rate < 0 ? Math.log(Math.max(1, size[i]! / (extinct * reference))) / -rate : Infinity)
-  const slowest = speed.reduce((least, one) => Math.min(least, one), Infinity)
-  const weightRe = sigma.map((rate, i) => re[i]! * rate - im[i]! * omega[i]!)
-  const weightIm = sigma.map((rate, i) => re[i]! * omega[i]! + im[i]! * rate)
-  const speeds: Modes = { sigma, omega, re: weightRe, im: weightIm }
-  const step = (t: number) => {
-    let fastest = slowest
-    for (let i = 0; i < count; i++) if (t < diesAt[i]! && speed[i]! > fastest) fastest = speed[i]!
-    return stepAngle / fastest
+  const speeds: Modes = {
+    sigma, omega, re: sigma.map((rate, i) => re[i]! * rate - im[i]! * omega[i]!), im: sigma.map((rate, i) => re[i]! * omega[i]! + im[i]! * rate),
   }
+  const walk = new ModalWalk(modes, reference)
   return {
     remains,
     decays,
     impulsive,
     transient: t => sumAt(modes, t),
     slope: t => sumAt(speeds, t),
-    envelope(t) {
-      if (!decays) return Infinity
-      let bound = 0
-      for (let i = 0; i < count; i++) bound += size[i]! * Math.exp(sigma[i]! * t)
-      return bound
-    },
-    next: t => t + step(t),
-    previous: t => Math.max(0, t - step(Math.max(0, t - step(t)))),
+    envelope: t => sigma.reduce((bound, rate, i) => bound + Math.hypot(re[i]!, im[i]!) * Math.exp(rate * t), 0),
+    instant: k => walk.instant(k),
+    previous: t => Math.max(0, t - walk.step(Math.max(0, t - walk.step(t)))),
     sample: (dt, samples) => sampleModes(modes, remains, dt, samples),
+  }
+}
+
+/** Instants along a sum of modes, computed once as they are asked for. Steps grow as the fast modes die out. */
+class ModalWalk {
+  private readonly instants: Instant[] = []
+  private readonly speed: Float64Array
+  private readonly diesAt: Float64Array
+  private readonly slowest: number
+  /** Where the modes stand at the last instant, and the factors that carry them one step on. */
+  private readonly x: Float64Array
+  private readonly y: Float64Array
+  private readonly turnRe: Float64Array
+  private readonly turnIm: Float64Array
+  private lastStep = NaN
+  private sinceStart = 0
+
+  constructor(private readonly modes: Modes, reference: number) {
+    const { sigma, omega, re, im } = modes
+    this.speed = sigma.map((rate, i) => Math.hypot(rate, omega[i]!))
+    this.diesAt = sigma.map((rate, i) => Math.log(Math.max(1, Math.hypot(re[i]!, im[i]!) / (extinct * reference))) / -rate)
+    this.slowest = this.speed.reduce((least, one) => Math.min(least, one), Infinity)
+    this.x = new Float64Array(sigma.length)
+    this.y = new Float64Array(sigma.length)
+    this.turnRe = new Float64Array(sigma.length)
+    this.turnIm = new Float64Array(sigma.length)
+    if (sigma.length > 0) this.standAt(0)
+  }
+
+  instant(k: number): Instant | null {
+    if (this.modes.sigma.length === 0) return null
+    while (this.instants.length <= k) this.advance()
+    return this.instants[k]!
+  }
+
+  /** The step that the fastest mode still alive at t allows. */
+  step(t: number): number {
+    let fastest = this.slowest
+    for (let i = 0; i < this.speed.length; i++) if (t < this.diesAt[i]! && this.speed[i]! > fastest) fastest = this.speed[i]!
+    return stepAngle / fastest
+  }
+
+  private advance(): void {
+    const { sigma, omega } = this.modes
+    const from = this.instants[this.instants.length - 1]!.time
+    const step = this.step(from)
+    if (step !== this.lastStep) {
+      for (let i = 0; i < sigma.length; i++) {
+        const size = Math.exp(sigma[i]! * step)
+        this.turnRe[i] = size * Math.cos(omega[i]! * step)
+        this.turnIm[i] = size * Math.sin(omega[i]! * step)
+      }
+      this.lastStep = step
+    }
+    if (++this.sinceStart >= freshStart) {
+      this.standAt(from + step)
+      return
+    }
+    for (let i = 0; i < sigma.length; i++) {
+      const turned = this.x[i]! * this.turnRe[i]! - this.y[i]! * this.turnIm[i]!
+      this.y[i] = this.x[i]! * this.turnIm[i]! + this.y[i]! * this.turnRe[i]!
+      this.x[i] = turned
+    }
+    this.record(from + step)
+  }
+
+  private standAt(t: number): void {
+    const { sigma, omega, re, im } = this.modes
+    for (let i = 0; i < sigma.length; i++) {
+      const size = Math.exp(sigma[i]! * t)
+      const cos = Math.cos(omega[i]! * t)
+      const sin = Math.sin(omega[i]! * t)
+      this.x[i] = size * (re[i]! * cos - im[i]! * sin)
+      this.y[i] = size * (re[i]! * sin + im[i]! * cos)
+    }
+    this.sinceStart = 0
+    this.record(t)
+  }
+
+  private record(time: number): void {
+    const { sigma, omega } = this.modes
+    let value = 0
+    let slope = 0
+    let envelope = 0
+    for (let i = 0; i < sigma.length; i++) {
+      const x = this.x[i]!
+      const y = this.y[i]!
+      value += x
+      slope += sigma[i]! * x - omega[i]! * y
+      envelope += Math.sqrt(x * x + y * y)
+    }
+    this.instants.push({ time, value, slope, envelope })
   }
 }
 
 /** Equal steps turn each mode by the same factor: two multiplications instead of three transcendental functions. */
 function sampleModes({ sigma, omega, re, im }: Modes, remains: number[], dt: number, samples: number): number[] {
-  const output = Array.from({ length: samples }, (_, k) => remains.reduceRight((value, coefficient) => value * k * dt + coefficient, 0))
+  const output = new Array<number>(samples)
+  for (let k = 0; k < samples; k++) output[k] = polynomialAt(remains, k * dt)
   for (let i = 0; i < sigma.length; i++) {
     const step = Math.exp(Math.min(sigma[i]! * dt, largestExponent))
     const turnRe = step * Math.cos(omega[i]! * dt)
     const turnIm = step * Math.sin(omega[i]! * dt)
-    const grows = sigma[i]! > 0
+    const interval = sigma[i]! > 0 ? 1 : freshStart
     let x = 0
     let y = 0
     for (let k = 0; k < samples; k++) {
-      if (grows || k % freshStart === 0) {
+      if (k % interval === 0) {
         const t = k * dt
         const size = Math.exp(Math.min(sigma[i]! * t, largestExponent))
         const cos = Math.cos(omega[i]! * t)
@@ -201,5 +278,5 @@ function sampleModes({ sigma, omega, re, im }: Modes, remains: number[], dt: num
       output[k]! += x
     }
   }
-  return output.map(value => Math.max(-largestSample, Math.min(largestSample, value)))
+  return output
 }

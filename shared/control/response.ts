@@ -4,11 +4,14 @@ import { cascade } from './cascade'
 import type { LoopFunctions } from './controller'
 import { chooseDuration } from './duration'
 import { modalSum } from './modal-sum'
-import { largestSample, type Trajectory } from './trajectory'
+import type { Trajectory } from './trajectory'
 import type { DesignSolution, ResponseInput, ResponseOptions, TransferFunction } from './types'
 
 /** Samples of a response where the caller names no number; the same as the limit of the HTTP contract's usual one. */
 export const usualSamples = 400
+
+/** Largest size of a sample: growth beyond it is cut off, so that every sample is a number. */
+const largestSample = 1e300
 
 /** How often the input is integrated from an impulse: step 1, ramp 2. */
 const integrations: Record<ResponseInput, number> = { 'reference-step': 1, 'reference-ramp': 2, 'disturbance-step': 1 }
@@ -43,10 +46,13 @@ export function sampleResponse(response: LoopResponse, poles: readonly Complex[]
   const { input = 'reference-step', amplitude = 1, samples = usualSamples } = options
   const duration = options.duration ?? chooseDuration(response.output, poles)
   const dt = duration / (samples - 1)
-  const scaled = (values: number[]) => values.map(value => Math.max(-largestSample, Math.min(largestSample, amplitude * value)) + 0)
+  const scaled = (values: number[]) => values.map(value => Math.max(-largestSample, Math.min(largestSample, amplitude * value)))
+  const time = new Array<number>(samples)
+  for (let k = 0; k < samples; k++) time[k] = k * dt
+  time[samples - 1] = duration
   return {
     input,
-    time: Array.from({ length: samples }, (_, k) => k === samples - 1 ? duration : k * dt),
+    time,
     output: scaled(response.output.sample(dt, samples)),
     effort: scaled(response.effort.sample(dt, samples)),
   }

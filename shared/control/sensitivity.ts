@@ -1,7 +1,8 @@
+import { evaluateAccurately } from '../numerics/compensated'
 import { abs, type Complex } from '../numerics/complex'
 import { findRoot } from '../numerics/find-root'
 import * as polynomial from '../numerics/polynomial'
-import { inUnitFrequency } from './along-axis'
+import { alongAxis, inUnitFrequency, type AlongAxis } from './along-axis'
 import type { TransferFunction } from './types'
 
 /** Frequencies per factor of e between the roots. */
@@ -21,41 +22,52 @@ const widths = [-2, -1, -0.4, 0, 0.4, 1, 2]
 export function sensitivityPeak(loop: TransferFunction, poles: readonly Complex[]): number | null {
   const { scaled: { numerator, denominator }, unit } = inUnitFrequency(loop)
   const characteristic = polynomial.add(denominator, numerator)
-  const top = withSlope(denominator)
-  const bottom = withSlope(characteristic)
+  const top = alongAxis(denominator)
+  const bottom = alongAxis(characteristic)
   let best = Math.max(
     ratio(polynomial.coefficientOf(denominator, 0), polynomial.coefficientOf(characteristic, 0)),
     ratio(polynomial.leading(denominator), polynomial.leading(characteristic)),
   )
+  const slopeAt = (w: number) => sample(top, bottom, w).slope
   let before: Sample | null = null
   for (const w of frequencies(poles, unit)) {
     const here = sample(top, bottom, w)
-    best = Math.max(best, here.size)
-    if (before && before.slope > 0 && here.slope < 0) best = Math.max(best, sample(top, bottom, findRoot(x => sample(top, bottom, x).slope, before.w, w, 1e-10)).size)
+    if (here.size > best) best = here.size
+    if (before && before.slope > 0 && here.slope < 0) {
+      const s = { re: 0, im: findRoot(slopeAt, before.w, w, 1e-10) }
+      best = Math.max(best, abs(evaluateAccurately(denominator, s)) / abs(evaluateAccurately(characteristic, s)))
+    }
     before = here
   }
   return best < boundless ? best : null
 }
 
 interface Sample { w: number, size: number, slope: number }
-interface WithSlope { p: number[], slope: number[] }
-
-function withSlope(p: number[]): WithSlope {
-  return { p, slope: polynomial.derivative(p) }
-}
 
 /** |S| and a number with the sign of d|S|/dw. */
-function sample(top: WithSlope, bottom: WithSlope, w: number): Sample {
-  const s = { re: 0, im: w }
-  const d = polynomial.evaluateComplex(top.p, s)
-  const p = polynomial.evaluateComplex(bottom.p, s)
-  const dSlope = polynomial.evaluateComplex(top.slope, s)
-  const pSlope = polynomial.evaluateComplex(bottom.slope, s)
-  // d/dw |q(jw)|^2 = 2 Re(j q' conj q) = -2 Im(q' conj q)
-  const turn = (q: Complex, slope: Complex) => slope.re * q.im - slope.im * q.re
-  const square = (q: Complex) => q.re * q.re + q.im * q.im
-  const size = abs(d) / abs(p)
-  return { w, size: Number.isNaN(size) ? 0 : size, slope: turn(d, dSlope) * square(p) - turn(p, pSlope) * square(d) }
+function sample(top: AlongAxis, bottom: AlongAxis, w: number): Sample {
+  const x = w * w
+  const d = squareAt(top, x)
+  const p = squareAt(bottom, x)
+  const size = Math.sqrt(d.square / p.square)
+  return { w, size: Number.isNaN(size) ? 0 : size, slope: d.slope * p.square - p.slope * d.square }
+}
+
+/** |p(jw)|^2 and its derivative in x = w^2. */
+function squareAt({ even, odd }: AlongAxis, x: number): { square: number, slope: number } {
+  let e = 0
+  let eSlope = 0
+  for (let i = 0; i < even.length; i++) {
+    eSlope = eSlope * x + e
+    e = e * x + even[i]!
+  }
+  let o = 0
+  let oSlope = 0
+  for (let i = 0; i < odd.length; i++) {
+    oSlope = oSlope * x + o
+    o = o * x + odd[i]!
+  }
+  return { square: e * e + x * o * o, slope: 2 * e * eSlope + o * o + 2 * x * o * oSlope }
 }
 
 function frequencies(poles: readonly Complex[], unit: number): number[] {

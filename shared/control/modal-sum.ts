@@ -17,6 +17,8 @@ const stepAngle = 0.4
 /** A mode smaller than this share of the signal no longer sets the step. */
 const extinct = 1e-9
 const unitRoundoff = 2 ** -53
+/** Error of the sum, as a share of the signal, that is let pass. */
+const tolerance = 1e-11
 /** Exponents are cut here, so that a growing mode times its weight stays a number. */
 const largestExponent = 600
 /** The recurrence over equal steps starts afresh this often, before its rounding adds up. */
@@ -62,14 +64,24 @@ interface Modes {
 
 /**
  * The inverse transform as a sum of modes (partial fractions over simple poles).
- * @returns null where poles lie so close together that the sum would cancel below 1e-11 of the signal: the matrix exponential serves then.
+ * @returns null where poles lie so close together that the sum would cancel, or are not known well enough for it: the matrix exponential
+ *   serves then, which forgives both.
  */
 export function modalSum(transform: Transform): Trajectory | null {
   const remains = remainingPolynomial(transform)
   const { modes, error } = residues(transform)
   const reference = signalSize(modes, remains)
-  if (!(error <= 1e-11 * reference)) return null
+  if (!(error + startError(transform, modes, remains) <= tolerance * reference)) return null
   return trajectoryOf(modes, remains, isImpulsive(transform), reference)
+}
+
+/** How far the sum misses y(0+), which the leading coefficients tell: what the poles' own errors do, where those are larger than rounding. */
+function startError(transform: Transform, modes: Modes, remains: number[]): number {
+  const { numerator, denominator, integrators } = transform
+  const lag = degree(denominator) + integrators - degree(numerator)
+  if (lag <= 0) return 0
+  const start = lag === 1 ? leading(numerator) / leading(denominator) : 0
+  return Math.abs(modes.re.reduce((sum, weight) => sum + weight, remains[0]!) - start)
 }
 
 /** Residues N(p) / (D'(p) p^integrators), with D'(p) as the product of distances; `error` bounds the rounding of their sum at any time. */

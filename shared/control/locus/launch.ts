@@ -30,6 +30,8 @@ const edge = 12
 /** How far the first piece out of a meeting reaches, in extents and as a share of the distance to the next root. */
 const reach = 0.02
 const reachShare = 0.1
+/** A root found this near to where it was sent, as a share of the distance to the next, is the one sent: slow ones hardly leave their place. */
+const slack = 1e-3
 /** Directions this close (radians) to the axis are on it: a real place spreads symmetrically. */
 const onAxis = 1e-6
 const attempts = 40
@@ -37,8 +39,11 @@ const attempts = 40
 /** The step of gain that carries the roots of a station as far as the reach: |z - z0|^m = |c| |k - k0|. */
 export function gainStepOf(loop: ScaledLoop, k0: number, station: Pick<Station, 'place' | 'count'>, others: Complex[]): number {
   const size = complex.abs(spreadFactor(loop, k0, station.place, station.count))
-  const gap = Math.min(Infinity, ...others.map(other => complex.distance(other, station.place)))
-  return size === 0 ? Infinity : Math.min(reach, reachShare * gap) ** station.count / size
+  return size === 0 ? Infinity : Math.min(reach, reachShare * gapAround(station.place, others)) ** station.count / size
+}
+
+function gapAround(place: Complex, others: Complex[]): number {
+  return Math.min(1, ...others.map(other => complex.distance(other, place)))
 }
 
 /** All places where the roots of the stations stand, the mirror images too, but for one. */
@@ -60,7 +65,7 @@ export function launch(loop: ScaledLoop, k0: number, stations: Station[], far: F
   for (let attempt = 0; ; attempt++) {
     const k = k0 + step
     const settle = attempt >= attempts || k0 + step / 4 === k0
-    const groups = stations.map(station => leave(loop, k0, k, station, settle))
+    const groups = stations.map(station => leave(loop, k0, k, station, gapAround(station.place, otherPlaces(stations, station)), settle))
     if (far !== null) groups.push(comeIn(loop, k0, k, far, settle))
     if (groups.every(group => group !== null)) return { movers: groups.flat(), k }
     step /= 4
@@ -73,19 +78,19 @@ export function farGainStep({ coefficient, count }: FarStation): number {
 }
 
 /** The roots of one station at gain k; null where the corrector ends elsewhere than sent (the step was too long), unless told to settle for it. */
-function leave(loop: ScaledLoop, k0: number, k: number, station: Station, settle: boolean): Mover[] | null {
+function leave(loop: ScaledLoop, k0: number, k: number, station: Station, gap: number, settle: boolean): Mover[] | null {
   const { place, count } = station
-  const movers = sendOut(loop, k, place, complex.scale(spreadFactor(loop, k0, place, count), k - k0), count, settle)
+  const movers = sendOut(loop, k, place, complex.scale(spreadFactor(loop, k0, place, count), k - k0), count, gap, settle)
   return movers && assign(station, movers)
 }
 
 function comeIn(loop: ScaledLoop, k0: number, k: number, far: FarStation, settle: boolean): Mover[] | null {
-  const movers = sendOut(loop, k, complex.zero, { re: far.coefficient / (k - k0), im: 0 }, far.count, settle)
+  const movers = sendOut(loop, k, complex.zero, { re: far.coefficient / (k - k0), im: 0 }, far.count, 0, settle)
   return movers && assign({ place: complex.zero, count: far.count, branches: far.branches, mirrors: [] }, movers)
 }
 
 /** Roots near place + spread^(1/count), in all its directions (from a real place: one of each mirrored pair). */
-function sendOut(loop: ScaledLoop, k: number, place: Complex, spread: Complex, count: number, settle: boolean): Mover[] | null {
+function sendOut(loop: ScaledLoop, k: number, place: Complex, spread: Complex, count: number, gap: number, settle: boolean): Mover[] | null {
   const size = complex.abs(spread) ** (1 / count)
   const movers: Mover[] = []
   for (let turn = 0; turn < count; turn++) {
@@ -94,7 +99,7 @@ function sendOut(loop: ScaledLoop, k: number, place: Complex, spread: Complex, c
     if (place.im === 0 && !real && Math.sin(angle) < 0) continue
     const target = { re: place.re + size * Math.cos(angle), im: real ? 0 : place.im + size * Math.sin(angle) }
     const root = refine(loop, k, target.re, target.im, real)
-    const astray = root === null || Math.hypot(root.re - target.re, root.im - target.im) > 0.4 * size
+    const astray = root === null || Math.hypot(root.re - target.re, root.im - target.im) > 0.4 * size + slack * gap
     if (astray && !settle) return null
     const at = astray ? { ...target, velocityRe: 0, velocityIm: 0 } : root
     movers.push({ ...at, branch: noBranch, mirror: real ? null : noBranch })

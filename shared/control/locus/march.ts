@@ -22,7 +22,7 @@ const separationShare = 0.25
 /** Pieces below this length are points on any screen: their curvature is of no account. */
 const invisible = 1e-6
 const longestStep = 1
-const shortestStep = 1e-13
+const shortestStep = 1e-15
 const mostSteps = 6000
 
 /** Writes the movers' present places into their branches. */
@@ -40,22 +40,21 @@ export function record(movers: Mover[], k: number): void {
  */
 export function march(loop: ScaledLoop, start: Mover[], from: number, to: number): Mover[] {
   let movers = start
-  let u = Math.log(from)
-  const end = Math.log(to)
+  let k = from
   let step = 0.02
-  for (let count = 0; u < end && count < mostSteps; count++) {
-    const last = u + step >= end
-    const next = last ? end : u + step
-    const k = last ? to : Math.exp(next)
-    const { arrived, strain } = advance(loop, movers, k, next - u)
+  for (let count = 0; k < to && count < mostSteps; count++) {
+    // Counted from the present gain, not as a running logarithm: close meetings leave intervals of few digits.
+    const next = Math.min(k * Math.exp(step), to)
+    const taken = Math.log1p((next - k) / k)
+    const { arrived, strain } = advance(loop, movers, next, taken)
     if (strain > 1 && step > shortestStep) {
-      step = Math.max((next - u) * Math.min(0.5, Math.max(0.1, 0.7 / strain)), shortestStep)
+      step = Math.max(taken * Math.min(0.5, Math.max(0.1, 0.7 / strain)), shortestStep)
       continue
     }
-    step = Math.min((next - u) * Math.min(2.5, Math.max(0.5, 0.8 / Math.max(strain, 1e-3))), longestStep)
     movers = arrived
-    u = next
+    k = next
     record(movers, k)
+    step = Math.max(Math.min(taken * Math.min(2.5, Math.max(0.5, 0.8 / Math.max(strain, 1e-3))), longestStep), shortestStep)
   }
   return movers
 }

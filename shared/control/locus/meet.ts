@@ -5,7 +5,7 @@ import { roots } from '../../numerics/roots'
 import type { FactoredLoop } from './factored-loop'
 import { farGainStep, gainStepOf, type FarStation, type Launched, type Station } from './launch'
 import { march, type Branch, type Mover } from './march'
-import { refine, type ScaledLoop } from './scaled-loop'
+import type { ScaledLoop } from './scaled-loop'
 import type { Node } from './trace-branches'
 
 /**
@@ -20,11 +20,11 @@ export function meet(scaled: ScaledLoop, loop: FactoredLoop, { movers, k }: Laun
     const others = node.meetings.filter(other => other.place !== place).map(other => other.place)
     return gainStepOf(scaled, node.k, { place, count: multiplicity }, [...bystanders, ...mirror, ...others])
   }))
-  const rest = march(scaled, movers, k, Math.max(node.k - before, k))
-  const stations: Station[] = node.meetings.map(({ place, multiplicity }) => gather(rest, place, multiplicity))
-  for (const mover of rest) stations.push(passBy(scaled, mover, node.k))
+  const edge = Math.max(node.k - before, k)
+  const rest = march(scaled, movers, k, edge)
+  const stations = node.meetings.map(({ place, multiplicity }) => gather(rest, place, multiplicity))
   for (const station of stations) touch(station, node.k)
-  return stations
+  return [...stations, ...march(scaled, rest, edge, node.k).map(standing)]
 }
 
 /**
@@ -34,13 +34,12 @@ export function meet(scaled: ScaledLoop, loop: FactoredLoop, { movers, k }: Laun
 export function passInfinity(scaled: ScaledLoop, loop: FactoredLoop, { movers, k }: Launched, node: Node, room: number, branches: Branch[]):
 { stations: Station[], far: FarStation } {
   const far = farStationOf(scaled, loop)
-  const rest = march(scaled, movers, k, node.k - Math.min(room, farGainStep(far)))
+  const edge = Math.max(node.k - Math.min(room, farGainStep(far)), k)
+  const rest = march(scaled, movers, k, edge)
   rest.sort((a, b) => Math.hypot(b.re, b.im) - Math.hypot(a.re, a.im))
   for (let gone = 0; gone < far.count && rest.length > 0;) gone += rest.shift()!.mirror === null ? 1 : 2
   branches.push(...far.branches)
-  const stations = rest.map(mover => passBy(scaled, mover, node.k))
-  for (const station of stations) touch(station, node.k)
-  return { stations, far }
+  return { stations: march(scaled, rest, edge, node.k).map(standing), far }
 }
 
 /** D - (d/n) N loses `count` powers of s; the first one left tells how fast the roots come in from infinity. */
@@ -87,10 +86,9 @@ function gather(movers: Mover[], place: Complex, count: number): Station {
   return station
 }
 
-/** A root that takes no part: at the node's gain it is a station of its own. */
-function passBy(scaled: ScaledLoop, mover: Mover, k: number): Station {
-  const root = refine(scaled, k, mover.re, mover.im, mover.mirror === null) ?? mover
-  return { place: { re: root.re, im: root.im }, count: 1, branches: [mover.branch], mirrors: mover.mirror === null ? [] : [mover.mirror] }
+/** A root that takes no part is a station of its own at the node's gain. */
+function standing({ re, im, branch, mirror }: Mover): Station {
+  return { place: { re, im }, count: 1, branches: [branch], mirrors: mirror === null ? [] : [mirror] }
 }
 
 function touch({ place, branches, mirrors }: Station, k: number): void {

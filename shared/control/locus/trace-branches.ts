@@ -13,8 +13,9 @@ import { thin } from './thin'
 const outward = 8
 /** Branches to a zero are followed to this distance from it, in extents. */
 const arrived = 1e-4
-/** Meetings whose gains differ by less than this (relative) happen at one node. */
-const sameGain = 1e-9
+/** Meetings whose gains differ by less than this (relative) happen at one node; those that are also this close (extents) are one. */
+const sameGain = 1e-11
+const samePlace = 2e-3
 /** Share of the way between two nodes that the first piece out of a node may take. */
 const firstShare = 0.3
 
@@ -83,8 +84,11 @@ function nodesOf(scaled: ScaledLoop, meetings: Breakaway[]): Node[] {
     const k = gain / scaled.gainUnit
     const place = complex.scale(point, 1 / scaled.extent)
     const node = nodes.find(other => Math.abs(other.k - k) <= sameGain * k)
+    const neighbour = node?.meetings.find(other => complex.distance(other.place, place) <= samePlace)
     if (node === undefined) nodes.push({ k, meetings: [{ place, multiplicity: meeting }], throughInfinity: false })
-    else node.meetings.push({ place, multiplicity: meeting })
+    else if (neighbour === undefined) node.meetings.push({ place, multiplicity: meeting })
+    // Two meetings one after the other that share a branch, too close to be told apart on the way: one of higher order.
+    else neighbour.multiplicity += meeting - 1
   }
   return nodes.sort((a, b) => a.k - b.k)
 }

@@ -1,0 +1,21 @@
+const year = 31_536_000
+
+/** Headers that every dynamic answer carries; the content security policy of pages is set where their nonce is made. */
+export default defineEventHandler((event) => {
+  const path = event.path.split('?')[0] ?? '/'
+  const shared = path.startsWith('/s/') || path.startsWith('/api/shared/')
+  setResponseHeaders(event, {
+    'X-Content-Type-Options': 'nosniff',
+    'X-Frame-Options': 'DENY',
+    'Cross-Origin-Opener-Policy': 'same-origin',
+    'Referrer-Policy': shared ? 'no-referrer' : 'same-origin',
+  })
+  if (shared) setResponseHeader(event, 'X-Robots-Tag', 'noindex, nofollow')
+  if (path.startsWith('/api/')) {
+    setResponseHeader(event, 'Content-Security-Policy', `default-src 'none'; frame-ancestors 'none'`)
+  }
+  if (path.startsWith('/api/') || shared || path.startsWith('/scenarios')) setResponseHeader(event, 'Cache-Control', 'no-store')
+  if (useRuntimeConfig(event).public.siteUrl.startsWith('https://')) {
+    setResponseHeader(event, 'Strict-Transport-Security', `max-age=${year}; includeSubDomains`)
+  }
+})

@@ -30,6 +30,10 @@ export default defineNuxtConfig({
   },
   // The session store of this application answers who is signed in; the module's own client fetch is not needed.
   auth: { loadStrategy: 'none', hash: { scrypt: { cost: 16384, blockSize: 8, parallelization: 5, maxMemory: 64 * 1024 * 1024 } } },
+  vite: {
+    // vue-konva asks for all of Konva for one flag; the plane draws with the core alone, 28 kB less for every visitor.
+    resolve: { alias: [{ find: /^konva$/, replacement: 'konva/lib/Core' }] },
+  },
   runtimeConfig: {
     session: { name: 'polewright', password: '', maxAge: 60 * 60 * 24 * 30, cookie: { sameSite: 'lax', secure: false } },
     databasePath: '.data/polewright.db',

@@ -1,0 +1,57 @@
+import type { Context } from 'konva/lib/Context'
+import { abs, conjugate } from '#shared/numerics/complex'
+import { formatNumber, formatPoint, placeLabel, placesAlong } from '~/utils/plane/labels'
+import { rayAngle, visibleRay } from '~/utils/plane/ray'
+import { toScreen, type ScreenPoint } from '~/utils/plane/viewport'
+import { paint } from '~/utils/plane/colors'
+import { font, writeText } from './paint-tools'
+import type { HandScene } from './plane-scene'
+
+const near = 280
+const clearance = 24
+
+/** The design point's own words: its place, its natural frequency, and whether it is on the locus. */
+export function paintPointLabel(context: Context, scene: HandScene): void {
+  const { viewport, colors, point, stale } = scene
+  const first = formatPoint(point)
+  const second = `${formatNumber(abs(point))} rad/s · ${standing(scene)}`
+  context.font = font(12)
+  const small = context.measureText(second).width
+  context.font = font(15, 700)
+  const width = Math.max(small, context.measureText(first).width)
+  const mark = toScreen(viewport, point)
+  const placed = placeLabel(mark, { width, height: 36 }, clearance, takenPlaces(scene, mark), viewport, scene.memory.labelPlace)
+  scene.memory.labelPlace = placed.index
+  const x = placed.align === 'right' ? placed.at.x + width : placed.at.x
+  const style = { halo: paint(colors.paper), align: placed.align }
+  writeText(context, first, { x, y: placed.at.y + 9 }, { ...style, color: paint(colors.vermilionInk) })
+  context.font = font(12)
+  writeText(context, second, { x, y: placed.at.y + 28 }, { ...style, color: paint(colors.slate, stale ? 0.7 : 1) })
+}
+
+function standing({ onLocus, leftoverDeg, stale }: HandScene): string {
+  if (stale) return 'waiting for the server'
+  if (onLocus) return 'on the locus'
+  return leftoverDeg === null ? 'off the locus' : `${formatNumber(leftoverDeg, 3, Math.max(10, Math.abs(leftoverDeg)))}° left over`
+}
+
+function takenPlaces({ viewport, point, grip, marks, roots, meetings, flags }: HandScene, mark: ScreenPoint): ScreenPoint[] {
+  const places: ScreenPoint[] = []
+  for (const angle of [rayAngle(point), -rayAngle(point)]) {
+    const ray = visibleRay(viewport, angle)
+    if (ray) places.push(...placesAlong(ray[0], ray[1], mark, near))
+  }
+  if (grip) {
+    const left = grip.x > 240 ? grip.x - 210 : grip.x
+    for (const dy of [-8, 4, 16]) places.push(...placesAlong({ x: left, y: grip.y + dy }, { x: left + 210, y: grip.y + dy }, mark, near))
+  }
+  for (const taken of [...marks, ...roots, ...roots.map(conjugate), ...meetings]) places.push(toScreen(viewport, taken))
+  for (const flag of flags) {
+    const { x, y } = toScreen(viewport, flag.point)
+    places.push(...placesAlong({ x, y }, { x, y: y - 40 }, mark, near))
+  }
+  const axis = toScreen(viewport, { re: 0, im: 0 })
+  places.push(...placesAlong({ x: 0, y: axis.y }, { x: viewport.width, y: axis.y }, mark, near))
+  places.push(...placesAlong({ x: axis.x, y: 0 }, { x: axis.x, y: viewport.height }, mark, near))
+  return places
+}

@@ -1,0 +1,42 @@
+import type { Complex } from '#shared/numerics/complex'
+import type { LoopAnalysis } from '#shared/control/types'
+import type { LocusHover } from '~/utils/plane/locus'
+import type { Region } from '~/utils/plane/regions'
+import type { ScreenPoint, Viewport } from '~/utils/plane/viewport'
+import type { PlaneColors } from '~/utils/plane/colors'
+
+/** What each layer is painted from: narrow, so that a drag repaints the top layer alone. */
+export interface GroundScene {
+  viewport: Viewport
+  colors: PlaneColors
+  regions: Region[]
+}
+
+export interface LocusScene {
+  viewport: Viewport
+  colors: PlaneColors
+  analysis: LoopAnalysis | null
+}
+
+export interface HandScene {
+  viewport: Viewport
+  colors: PlaneColors
+  /** Where the design point is drawn: its place, or on its way there. */
+  point: Complex
+  grip: ScreenPoint | null
+  meetings: Complex[]
+  roots: Complex[]
+  /** The design point is a closed-loop root, exactly. */
+  onLocus: boolean
+  /** Degrees; null where nothing is known or nothing is left over. */
+  leftoverDeg: number | null
+  /** The figures wait for the server. */
+  stale: boolean
+  flags: { number: number, point: Complex }[]
+  hover: (LocusHover & { label: string }) | null
+  turning: boolean
+  /** Places that labels keep clear of, such as poles and zeros. */
+  marks: Complex[]
+  /** What the painter keeps from frame to frame: the side of the point on which its label stands. */
+  memory: { labelPlace: number | null }
+}

@@ -1,0 +1,61 @@
+import { abs, type Complex } from '#shared/numerics/complex'
+import { clipSegment } from './clip'
+import type { ScreenPoint } from './viewport'
+
+/** A number with so many significant digits, decimals fixed by `size` so that neighbours line up; true minus sign. */
+export function formatNumber(value: number, digits = 3, size = Math.abs(value)): string {
+  if (!Number.isFinite(value)) return '—'
+  if (value === 0 && size === 0) return '0'
+  const order = Math.floor(Math.log10(size) + 1e-9)
+  const text = order >= 5 || order < -3
+    ? Math.abs(value).toExponential(digits - 1).replace('e+', 'e').replace('e-', 'e−')
+    : Math.abs(value).toFixed(Math.min(12, Math.max(0, digits - 1 - order)))
+  return (value < 0 && Number(text.replace('−', '-')) !== 0 ? '−' : '') + text
+}
+
+/** −1.32 + 1.76j */
+export function formatPoint(point: Complex): string {
+  const size = abs(point)
+  const sign = point.im < 0 ? '−' : '+'
+  return `${formatNumber(point.re, 3, size)} ${sign} ${formatNumber(Math.abs(point.im), 3, size)}j`
+}
+
+export interface Placement {
+  /** Which candidate was chosen, to be handed back next time. */
+  index: number
+  /** Upper left corner of the label. */
+  at: ScreenPoint
+  align: 'left' | 'right'
+}
+
+/** Left, right, above and below the mark, as (horizontal, vertical) sides. */
+const candidates: [number, number][] = [[-1, 0], [1, 0], [-1, -1], [1, -1], [-1, 1], [1, 1]]
+
+/**
+ * The place of a label beside its mark that covers the fewest of the given places and stays in the frame. The place chosen last is kept
+ * until another one is clearly better, so that the label does not hop while the mark is dragged.
+ */
+export function placeLabel(
+  mark: ScreenPoint, size: { width: number, height: number }, gap: number, taken: readonly ScreenPoint[],
+  frame: { width: number, height: number }, previous: number | null,
+): Placement {
+  const scored = candidates.map(([across, down], index) => {
+    const x = across < 0 ? mark.x - gap - size.width : mark.x + gap
+    const y = mark.y - size.height / 2 + down * (size.height / 2 + gap * 0.8)
+    const covered = taken.filter(({ x: tx, y: ty }) => tx > x - 4 && tx < x + size.width + 4 && ty > y - 4 && ty < y + size.height + 4).length
+    const outside = Math.max(0, -x) + Math.max(0, x + size.width - frame.width) + Math.max(0, -y) + Math.max(0, y + size.height - frame.height)
+    const cost = covered * 10 + outside * 20 + index - (index === previous ? 25 : 0)
+    return { index, at: { x, y }, align: across < 0 ? 'right' as const : 'left' as const, cost }
+  })
+  const { index, at, align } = scored.reduce((best, candidate) => candidate.cost < best.cost ? candidate : best)
+  return { index, at, align }
+}
+
+/** Places along a segment, a few pixels apart, for `placeLabel` to keep clear of; only those near `mark` matter. */
+export function placesAlong(a: ScreenPoint, b: ScreenPoint, mark: ScreenPoint, near: number, spacing = 8): ScreenPoint[] {
+  const piece = clipSegment(a, b, { left: mark.x - near, right: mark.x + near, top: mark.y - near, bottom: mark.y + near })
+  if (!piece) return []
+  const [from, to] = piece
+  const count = Math.max(1, Math.ceil(Math.hypot(to.x - from.x, to.y - from.y) / spacing))
+  return Array.from({ length: count + 1 }, (_, n) => ({ x: from.x + (to.x - from.x) * n / count, y: from.y + (to.y - from.y) * n / count }))
+}

@@ -89,7 +89,7 @@ function paintGrip(context: Context, { viewport, colors, point, grip, turning }:
   context.stroke()
   const ratio = dampingRatioOf(point)
   const first = `damping ratio ${formatNumber(ratio, 3, 0.5)}`
-  const second = ratio > 0 ? `overshoot ${formatNumber(overshootFromDamping(ratio), 2, 10)} % if second order` : 'grows if second order'
+  const second = ratio > 0 ? `overshoot ${formatNumber(overshootFromDamping(ratio), 3, 10)} % if second order` : 'grows if second order'
   context.font = font(13, 600)
   const width = Math.max(context.measureText(first).width, context.measureText(second).width)
   const toLeft = grip.x - 18 - width > 6

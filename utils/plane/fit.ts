@@ -4,8 +4,8 @@ import { fitBounds, type Bounds, type Viewport } from './viewport'
 
 type FitAnalysis = Pick<LoopAnalysis, 'openLoop' | 'breakaways' | 'imaginaryAxisCrossings'>
 
-/** Poles and zeros further out than this multiple of the reach of the design are left outside the first view. */
-const farFactor = 4
+/** Marks further out than this multiple of the reach of the design are left outside the first view. */
+const farFactor = 2.2
 const padding = 44
 
 /**
@@ -25,7 +25,8 @@ export function interestingBounds(analysis: FitAnalysis | null, designPoint: Com
   const shown = [designPoint, ...marks.filter(mark => abs(mark) <= farFactor * reach)]
   const right = Math.max(0.35 * reach, ...shown.map(mark => mark.re))
   const left = Math.min(-0.35 * reach, ...shown.map(mark => mark.re))
-  const top = Math.max(0.6 * reach, ...shown.map(mark => Math.abs(mark.im)))
+  // Room beyond the design point for the outer end of its ray.
+  const top = Math.max(0.6 * reach, 1.6 * designPoint.im, ...shown.map(mark => Math.abs(mark.im)))
   return { left, right, bottom: -top, top }
 }
 

@@ -69,7 +69,7 @@ function drawDecay(region: Region & { kind: 'decay' }, viewport: Viewport, view:
 /** Above and below the real axis the forbidden part is a wedge between axis and ray: two half planes each. */
 function drawDamping(region: Region & { kind: 'damping' }, viewport: Viewport, view: ScreenPoint[]): RegionDrawing {
   const origin = toScreen(viewport, { re: 0, im: 0 })
-  const angle = Math.acos(region.dampingRatio)
+  const angle = Math.PI - Math.acos(region.dampingRatio)
   const { left, right, top, bottom } = boundsOf(viewport)
   const reach = 2 * viewport.scale * (Math.max(Math.abs(left), Math.abs(right)) + Math.max(Math.abs(top), Math.abs(bottom)))
   const half = (up: 1 | -1) => {

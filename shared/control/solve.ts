@@ -8,7 +8,7 @@ import { dominantPole } from './dominant-pole'
 import { estimateAt } from './estimate'
 import { placeGains, type Placement } from './placement'
 import { readAll } from './readings'
-import { respondTo, sampleResponse } from './response'
+import { respondTo, sampleResponse } from './response/response'
 import type { Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
 import { judge } from './verdicts'
 

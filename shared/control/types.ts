@@ -40,7 +40,7 @@ export interface Requirement {
 }
 
 export interface Verdict extends Requirement {
-  /** The reading as computed; null where the figure does not exist (then `met` is false). */
+  /** The reading as computed; null where the figure does not exist. `met` is then false, save for a margin or bandwidth of a stable loop without limit. */
   actual: number | null
   met: boolean
 }

@@ -1,6 +1,6 @@
-import type { Complex } from '../numerics/complex'
-import { evaluateComplexCompensated } from '../numerics/compensated'
-import { degree, derivative, evaluateComplex, leading, rootsAtOrigin, type Polynomial } from '../numerics/polynomial'
+import type { Complex } from '../../numerics/complex'
+import { evaluateComplexCompensated } from '../../numerics/compensated'
+import { degree, derivative, evaluateComplex, leading, rootsAtOrigin, type Polynomial } from '../../numerics/polynomial'
 import { polynomialAt, type Instant, type Trajectory } from './trajectory'
 
 /** A Laplace transform N(s) / (D(s) s^integrators) of which the roots of D are known. */

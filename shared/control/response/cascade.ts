@@ -1,6 +1,6 @@
-import type { Complex } from '../numerics/complex'
-import { applyMatrix, matrixExponential } from '../numerics/matrix-exponential'
-import { leading, rootsAtOrigin, type Polynomial } from '../numerics/polynomial'
+import type { Complex } from '../../numerics/complex'
+import { applyMatrix, matrixExponential } from '../../numerics/matrix-exponential'
+import { leading, rootsAtOrigin, type Polynomial } from '../../numerics/polynomial'
 import { isImpulsive, polesAtOrigin, remainingPolynomial, type Transform } from './modal-sum'
 import { polynomialAt, type Instant, type Trajectory } from './trajectory'
 
@@ -138,7 +138,7 @@ class Table {
 }
 
 function realise(transform: Transform): Realisation {
-  const { sections, numerator } = chain(transform)
+  const { sections, numerator, denominator } = chain(transform)
   const n = sections.reduce((sum, section) => sum + (section.pole.im === 0 ? 1 : 2), 0)
   const matrix = new Float64Array(n * n)
   const start = new Float64Array(n)
@@ -158,12 +158,15 @@ function realise(transform: Transform): Realisation {
     else matrix[driven * n + input] = gain
     row = driven + 1
   })
-  return { matrix, start, output: outputRow(sections, first, numerator, n) }
+  // The sections multiply to the denominator only as well as its roots are known, which for a multiple root is poorly. What the product lacks, fed
+  // back to the head of the chain, makes the denominator exact.
+  const head = sections[0]!.pole.im === 0 ? 0 : 1
+  weights(sections, first, denominator, n).forEach((weight, j) => matrix[head * n + j]! -= sections[0]!.gain * weight)
+  return { matrix, start, output: weights(sections, first, numerator, n) }
 }
 
-/** Sections, the fastest first, and the numerator over a monic denominator. */
-function chain(transform: Transform): { sections: Section[], numerator: number[] } {
-  const stripped = transform.numerator.slice(0, transform.numerator.length - rootsAtOrigin(transform.numerator))
+/** Sections, the fastest first, and numerator and monic denominator with common roots at the origin taken out. */
+function chain(transform: Transform): { sections: Section[], numerator: number[], denominator: number[] } {
   const atOrigin = polesAtOrigin(transform)
   const poles = transform.poles.filter(pole => pole.im > 0 || (pole.im === 0 && pole.re !== 0))
   const sizes = poles.map(pole => Math.hypot(pole.re, pole.im))
@@ -171,13 +174,17 @@ function chain(transform: Transform): { sections: Section[], numerator: number[]
   const sections = poles.map((pole, i) => ({ pole, gain: sizes[i]! })).sort((a, b) => b.gain - a.gain)
   for (let i = 0; i < atOrigin; i++) sections.push({ pole: { re: 0, im: 0 }, gain: pace })
   const lead = leading(transform.denominator)
-  return { sections, numerator: [...stripped.map(c => c / lead), ...new Array<number>(Math.max(0, -atOrigin)).fill(0)] }
+  const withZeros = (p: Polynomial, zeros: number) => [...p.slice(0, p.length - rootsAtOrigin(p)).map(c => c / lead), ...new Array<number>(Math.max(0, zeros)).fill(0)]
+  return { sections, numerator: withZeros(transform.numerator, -atOrigin), denominator: withZeros(transform.denominator, atOrigin) }
 }
 
-/** Weights of the states: remainders of the numerator's repeated division by the sections, the last one first. The quotient left over is impulses. */
-function outputRow(sections: Section[], first: number[], numerator: number[], n: number): Float64Array {
+/**
+ * Weights of the states that make p over the product of all sections: remainders of p's repeated division by the sections, the last one first. The
+ * quotient left over (impulses, or the product itself) is dropped.
+ */
+function weights(sections: Section[], first: number[], p: Polynomial, n: number): Float64Array {
   const output = new Float64Array(n)
-  let rest: Polynomial = numerator
+  let rest = p
   const gains: number[] = []
   sections.reduce((total, { pole, gain }, i) => gains[i] = total * (pole.im === 0 ? gain : gain * gain), 1)
   for (let i = sections.length - 1; i >= 0; i--) {

@@ -1,4 +1,4 @@
-import type { Complex } from '../numerics/complex'
+import type { Complex } from '../../numerics/complex'
 import { lastOutside, type Trajectory } from './trajectory'
 
 /** Room after the response has settled, so that the eye sees it has. */

@@ -1,4 +1,4 @@
-import { findRoot } from '../numerics/find-root'
+import { findRoot } from '../../numerics/find-root'
 
 /** One instant of a walk along a transient. */
 export interface Instant {
@@ -64,7 +64,7 @@ export function highest(y: Trajectory, sign: 1 | -1, floor: number): Extremum | 
   return best.value > floor ? best : null
 }
 
-/** The first instant at which sign * transient reaches a level (< 0, above which it ends); null where it never does. */
+/** The first instant at which sign * transient reaches a level; null where it never does. */
 export function firstReaching(y: Trajectory, sign: 1 | -1, level: number): number | null {
   let a = y.instant(0)
   if (a === null || sign * a.value >= level) return 0

@@ -1,9 +1,9 @@
-import { evaluateAccurately } from '../numerics/compensated'
-import { abs, type Complex } from '../numerics/complex'
-import { findRoot } from '../numerics/find-root'
-import * as polynomial from '../numerics/polynomial'
+import { evaluateAccurately } from '../../numerics/compensated'
+import { abs, type Complex } from '../../numerics/complex'
+import { findRoot } from '../../numerics/find-root'
+import * as polynomial from '../../numerics/polynomial'
 import { alongAxis, inUnitFrequency, type AlongAxis } from './along-axis'
-import type { TransferFunction } from './types'
+import type { TransferFunction } from '../types'
 
 /** Frequencies per factor of e between the roots. */
 const density = 8

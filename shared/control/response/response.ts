@@ -1,11 +1,11 @@
-import type { Complex } from '../numerics/complex'
-import { scale } from '../numerics/polynomial'
+import type { Complex } from '../../numerics/complex'
+import { scale } from '../../numerics/polynomial'
 import { cascade } from './cascade'
-import type { LoopFunctions } from './controller'
+import type { LoopFunctions } from '../controller'
 import { chooseDuration } from './duration'
 import { modalSum } from './modal-sum'
 import type { Trajectory } from './trajectory'
-import type { DesignSolution, ResponseInput, ResponseOptions, TransferFunction } from './types'
+import type { DesignSolution, ResponseInput, ResponseOptions, TransferFunction } from '../types'
 
 /** Samples of a response where the caller names no number; the same as the limit of the HTTP contract's usual one. */
 export const usualSamples = 400

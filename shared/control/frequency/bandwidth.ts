@@ -1,8 +1,8 @@
-import { abs } from '../numerics/complex'
-import * as polynomial from '../numerics/polynomial'
+import { abs } from '../../numerics/complex'
+import * as polynomial from '../../numerics/polynomial'
 import { alongAxis, inUnitFrequency, positiveFrequencies, squaredSize } from './along-axis'
-import { evaluateAt } from './transfer-function'
-import type { TransferFunction } from './types'
+import { evaluateAt } from '../transfer-function'
+import type { TransferFunction } from '../types'
 
 /**
  * The first frequency, rad/s, at which |T(jw)| has fallen 3 dB below |T(0)|, that is to |T(0)|/sqrt(2), half the power (-3.0103 dB); null where

@@ -1,7 +1,7 @@
-import * as polynomial from '../numerics/polynomial'
-import type { Polynomial } from '../numerics/polynomial'
-import { realRoots, timesPowerOfTwo } from '../numerics/roots'
-import type { TransferFunction } from './types'
+import * as polynomial from '../../numerics/polynomial'
+import type { Polynomial } from '../../numerics/polynomial'
+import { realRoots, timesPowerOfTwo } from '../../numerics/roots'
+import type { TransferFunction } from '../types'
 
 /** p(jw) = even(x) + j w odd(x) with x = w^2. */
 export interface AlongAxis { even: number[], odd: number[] }

@@ -1,9 +1,9 @@
-import { arg, abs, negate, type Complex } from '../numerics/complex'
-import * as polynomial from '../numerics/polynomial'
+import { arg, abs, negate, type Complex } from '../../numerics/complex'
+import * as polynomial from '../../numerics/polynomial'
 import { alongAxis, inUnitFrequency, positiveFrequencies, squaredSize, timesConjugate } from './along-axis'
-import { toDegrees, wrapAngle } from './angle'
-import { evaluateAt, relativeDegree } from './transfer-function'
-import type { Readings, TransferFunction } from './types'
+import { toDegrees, wrapAngle } from '../angle'
+import { evaluateAt, relativeDegree } from '../transfer-function'
+import type { Readings, TransferFunction } from '../types'
 
 export type Margins = Pick<Readings, 'gainMargin' | 'gainMarginDb' | 'phaseMarginDeg' | 'gainCrossover' | 'phaseCrossover' | 'delayMargin'>
 

@@ -2,7 +2,7 @@ import { gainAtInfinity, imaginaryAxisCrossings, rayIntersections, stableGain } 
 import { arrivals, departures } from './locus/directions'
 import { asymptotes } from './locus/asymptotes'
 import { breakaways } from './locus/breakaways'
-import { cancelCommon, factor, type FactoredLoop } from './locus/factored-loop'
+import { cancelCommon, cancellationWidth, factor, invisibleWidth, type FactoredLoop } from './locus/factored-loop'
 import { traceBranches } from './locus/trace-branches'
 import { openLoop } from './controller'
 import { relativeDegree, systemType } from './transfer-function'
@@ -21,14 +21,16 @@ import type { Controller, Gains, LoopAnalysis, LoopModel } from './types'
 export function analyzeLoop(model: LoopModel, controller: Controller, options: { dampingRatio?: number, gains?: Gains } = {}): LoopAnalysis {
   const open = openLoop(model, controller, options.gains)
   const whole = factor(open)
-  const { loop, cancelled } = cancelCommon(whole)
+  const { loop } = cancelCommon(whole, cancellationWidth)
+  const { loop: drawn, cancelled } = cancelCommon(whole, invisibleWidth)
   const meetings = breakaways(loop)
   const crossings = imaginaryAxisCrossings(loop)
   const beyond = [...crossings.map(({ gain }) => gain), gainAtInfinity(loop) ?? 0]
   const extent = extentOf([
     ...whole.poles, ...whole.zeros, ...meetings.map(({ point }) => point), ...crossings.map(({ frequency }) => ({ re: 0, im: frequency })),
   ], loop)
-  const branches = loop.poles.length === 0 ? [] : traceBranches(loop, meetings, beyond, extent)
+  const drawnMeetings = drawn.poles.length === loop.poles.length ? meetings : breakaways(drawn)
+  const branches = drawn.poles.length === 0 ? [] : traceBranches(drawn, drawnMeetings, beyond, extent)
   const last = Math.max(1, ...branches.flatMap(({ points }) => points[points.length - 1]![2]))
   return {
     openLoop: {

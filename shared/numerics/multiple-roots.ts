@@ -70,6 +70,6 @@ function explains(p: Polynomial, candidate: RepeatedRoot[]): boolean {
   const rebuilt = scale(fromRoots(all), leading(p))
   const sizes = fromRoots(all.map(root => ({ re: -Math.hypot(root.re, root.im), im: 0 })), Math.abs(leading(p)))
   const first = p.length - rebuilt.length
-  const tolerance = 16 * all.length * 2 ** -53
+  const tolerance = 64 * all.length * 2 ** -53
   return rebuilt.every((coefficient, i) => Math.abs(coefficient - p[first + i]!) <= tolerance * sizes[i]!)
 }

@@ -16,8 +16,10 @@ export interface FactoredLoop extends TransferFunction {
   distinctZeros: RepeatedRoot[]
 }
 
-/** A pole and a zero this close (relative to their size) cancel: no branch between them could be told from a point. */
-const cancellationWidth = 1e-9
+/** A pole and a zero this close (relative to their size) cancel: rounding of coefficients may have parted them. */
+export const cancellationWidth = 1e-9
+/** At this distance they are one point on any screen, though figures still feel the difference. */
+export const invisibleWidth = 1e-6
 
 /** Poles, zeros and gain of L0. */
 export function factor({ numerator, denominator }: TransferFunction): FactoredLoop {
@@ -38,12 +40,11 @@ export function factor({ numerator, denominator }: TransferFunction): FactoredLo
  * The loop without poles that a zero takes away. Such a pole is a closed-loop root at every gain: it belongs to the locus as a point and would
  * only blur the conditions for the rest.
  */
-export function cancelCommon(loop: FactoredLoop): { loop: FactoredLoop, cancelled: Complex[] } {
+export function cancelCommon(loop: FactoredLoop, width: number): { loop: FactoredLoop, cancelled: Complex[] } {
   const zeros = [...loop.zeros]
   const cancelled: Complex[] = []
   const poles = loop.poles.filter((pole) => {
-    const width = cancellationWidth * Math.hypot(pole.re, pole.im)
-    const i = zeros.findIndex(zero => distance(zero, pole) <= width)
+    const i = zeros.findIndex(zero => distance(zero, pole) <= width * Math.hypot(pole.re, pole.im))
     if (i < 0) return true
     zeros.splice(i, 1)
     cancelled.push(pole)

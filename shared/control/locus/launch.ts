@@ -99,7 +99,7 @@ function sendOut(loop: ScaledLoop, k: number, place: Complex, spread: Complex, c
     if (place.im === 0 && !real && Math.sin(angle) < 0) continue
     const target = { re: place.re + size * Math.cos(angle), im: real ? 0 : place.im + size * Math.sin(angle) }
     const root = refine(loop, k, target.re, target.im, real)
-    const astray = root === null || Math.hypot(root.re - target.re, root.im - target.im) > 0.4 * size + slack * gap
+    const astray = root === null || Math.hypot(root.re - target.re, root.im - target.im) > 0.4 * size + (count === 1 ? slack * gap : 0)
     if (astray && !settle) return null
     const at = astray ? { ...target, velocityRe: 0, velocityIm: 0 } : root
     movers.push({ ...at, branch: noBranch, mirror: real ? null : noBranch })

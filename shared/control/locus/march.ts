@@ -23,7 +23,8 @@ const separationShare = 0.25
 const invisible = 1e-6
 const longestStep = 1
 const shortestStep = 1e-15
-const mostSteps = 6000
+/** An interval that needs more is finished in one piece: what is left of it lies below the accuracy of the poles and zeros. */
+const mostSteps = 2000
 
 /** Writes the movers' present places into their branches. */
 export function record(movers: Mover[], k: number): void {
@@ -55,6 +56,10 @@ export function march(loop: ScaledLoop, start: Mover[], from: number, to: number
     k = next
     record(movers, k)
     step = Math.max(Math.min(taken * Math.min(2.5, Math.max(0.5, 0.8 / Math.max(strain, 1e-3))), longestStep), shortestStep)
+  }
+  if (k < to) {
+    movers = movers.map(mover => ({ ...mover, ...refine(loop, to, mover.re, mover.im, mover.mirror === null) }))
+    record(movers, to)
   }
   return movers
 }

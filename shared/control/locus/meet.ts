@@ -8,6 +8,10 @@ import { march, type Branch, type Mover } from './march'
 import type { ScaledLoop } from './scaled-loop'
 import type { Node } from './trace-branches'
 
+/** The last piece to a meeting is no longer than this (extents). */
+const nearby = 0.03
+const attempts = 30
+
 /**
  * Carries the roots up to a meeting and onto it.
  * @param room the last piece begins no further than this below the node's gain
@@ -20,8 +24,14 @@ export function meet(scaled: ScaledLoop, loop: FactoredLoop, { movers, k }: Laun
     const others = node.meetings.filter(other => other.place !== place).map(other => other.place)
     return gainStepOf(scaled, node.k, { place, count: multiplicity }, [...bystanders, ...mirror, ...others])
   }))
-  const edge = Math.max(node.k - before, k)
-  const rest = march(scaled, movers, k, edge)
+  let edge = Math.max(node.k - before, k)
+  let rest = march(scaled, movers, k, edge)
+  for (let attempt = 0; attempt < attempts && !allNear(rest, node); attempt++) {
+    const closer = node.k - (node.k - edge) / 4
+    if (closer >= node.k) break
+    rest = march(scaled, rest, edge, closer)
+    edge = closer
+  }
   const stations = node.meetings.map(({ place, multiplicity }) => gather(rest, place, multiplicity))
   for (const station of stations) touch(station, node.k)
   return [...stations, ...march(scaled, rest, edge, node.k).map(standing)]
@@ -66,6 +76,14 @@ function rootsBeside(scaled: ScaledLoop, { numerator, denominator }: FactoredLoo
     }
   }
   return all
+}
+
+/** Whether every meeting has its roots about it: where the local expansion misjudges the way, they may still be far. */
+function allNear(movers: Mover[], node: Node): boolean {
+  return node.meetings.every(({ place, multiplicity }) => {
+    const near = movers.filter(({ re, im }) => Math.hypot(re - place.re, im - place.im) <= nearby)
+    return near.reduce((count, { mirror }) => count + (mirror !== null && place.im === 0 ? 2 : 1), 0) >= multiplicity
+  })
 }
 
 /** Takes the movers that come to a meeting (the nearest ones) out of the list. */

@@ -1,0 +1,143 @@
+import { readFileSync } from 'node:fs'
+import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import type { DesignSolution, LoopAnalysis } from '#shared/control/types'
+import type { ErrorBody } from '#shared/schemas/errors'
+import { Client } from '../helpers/client'
+import { startServer, type RunningServer } from '../helpers/server'
+
+let server: RunningServer
+let client: Client
+
+beforeAll(async () => {
+  server = await startServer()
+  client = new Client(server.origin)
+})
+afterAll(() => server.stop())
+
+const loop = { plant: { form: 'coefficients', numerator: [1], denominator: [1, 3, 2, 0] } }
+const good = { loop, controller: { form: 'gain' }, designPoint: { dampingRatio: 0.5, naturalFrequency: 2 / 3 } }
+
+describe('POST /api/design/solve', () => {
+  // Ogata, Modern Control Engineering, 5th ed., Example 6-1 (published.json B01; printed figures partly read, partly from memory).
+  it('answers with the gain of the magnitude condition and the readings, under the names of the contract', async () => {
+    const answer = await client.post<DesignSolution>('/api/design/solve', {
+      ...good, requirements: [{ reading: 'overshootPercent', limit: 'at-most', value: 20 }, { reading: 'gainMarginDb', limit: 'at-least', value: 20 }],
+    })
+    expect(answer.status).toBe(200)
+    expect(answer.body.gains).toEqual({ k: expect.closeTo(28 / 27, 10) })
+    expect(answer.body.onLocus).toBe(true)
+    expect(Object.keys(answer.body).sort()).toEqual([
+      'alternatives', 'closedLoopPoles', 'closedLoopZeros', 'designPoint', 'dominance', 'estimate', 'gains', 'leftoverAngleDeg', 'onLocus',
+      'readings', 'response', 'stable', 'unmet', 'verdicts',
+    ])
+    expect(Object.keys(answer.body.readings).sort()).toEqual([
+      'bandwidth', 'delayMargin', 'finalValue', 'gainCrossover', 'gainMargin', 'gainMarginDb', 'overshootPercent', 'peakEffort', 'peakTime',
+      'phaseCrossover', 'phaseMarginDeg', 'riseTime', 'sensitivityPeak', 'settlingTime', 'steadyStateErrorRamp', 'steadyStateErrorStep',
+    ])
+    expect(answer.body.verdicts.map(verdict => verdict.met)).toEqual([true, false])
+    expect(answer.body.unmet).toBe(1)
+    expect(answer.body.response.time).toHaveLength(400)
+  })
+
+  it('evaluates given gains, and an unstable design is an answer', async () => {
+    const { designPoint: _, ...rest } = good
+    const answer = await client.post<DesignSolution>('/api/design/solve', { ...rest, gains: { k: 12 } })
+    expect(answer.status).toBe(200)
+    expect(answer.body).toMatchObject({ stable: false, gains: { k: 12 }, readings: { overshootPercent: null, settlingTime: null } })
+    expect(answer.body.readings.gainMarginDb).toBeCloseTo(-20 * Math.log10(2), 9)
+  })
+
+  it('takes the plant as a formula with named parameters', async () => {
+    const plant = { form: 'expression', expression: 'k0/(s·(s+1)·(s+p))', parameters: { k0: { value: 1, unit: 'rad/s' }, p: { value: 2, tolerancePercent: 10 } } }
+    const answer = await client.post<DesignSolution>('/api/design/solve', { ...good, loop: { plant } })
+    expect(answer.body.gains).toEqual({ k: expect.closeTo(28 / 27, 10) })
+  })
+
+  it('agrees over HTTP with the values in 50-digit arithmetic', async () => {
+    const cases = JSON.parse(readFileSync(new URL('../fixtures/loops-50-digit.json', import.meta.url), 'utf8')) as {
+      oneGain: { plant: object, shape: object, designPoint: object, gain: number, figures: { overshootPercent: number } }[]
+    }
+    for (const one of cases.oneGain.slice(0, 12)) {
+      const { body } = await client.post<DesignSolution>('/api/design/solve', {
+        loop: { plant: one.plant }, controller: { form: 'gain', shape: one.shape }, designPoint: one.designPoint,
+      })
+      expect(Math.abs((body.gains as { k: number }).k / one.gain - 1)).toBeLessThan(1e-10)
+      expect(body.readings.overshootPercent).toBeCloseTo(one.figures.overshootPercent, 6)
+    }
+  })
+})
+
+describe('POST /api/loop/analyze', () => {
+  it('answers with the locus and its facts', async () => {
+    const { status, body } = await client.post<LoopAnalysis>('/api/loop/analyze', { loop, controller: { form: 'gain' }, dampingRatio: 0.5 })
+    expect(status).toBe(200)
+    expect(body.asymptotes).toEqual({ centroid: -1, anglesDeg: [60, 180, 300].map(angle => expect.closeTo(angle, 9)) })
+    expect(body.stableGain).toEqual([[0, expect.closeTo(6, 9)]])
+    expect(body.branches).toHaveLength(3)
+    expect(body.rayIntersections).toEqual([{ point: { re: expect.closeTo(-1 / 3, 10), im: expect.closeTo(1 / Math.sqrt(3), 10) }, gain: expect.closeTo(28 / 27, 10) }])
+  })
+
+  it('needs the present gains of a form that has several', async () => {
+    const without = await client.post<ErrorBody>('/api/loop/analyze', { loop, controller: { form: 'pd' } })
+    expect([without.status, without.body.data?.issues?.[0]?.path]).toEqual([422, 'gains'])
+    expect((await client.post('/api/loop/analyze', { loop, controller: { form: 'pd' }, gains: { kp: 1, kd: 2 } })).status).toBe(200)
+  })
+})
+
+describe('bad input', () => {
+  const plant = (fields: object) => ({ ...good, loop: { plant: { ...loop.plant, ...fields } } })
+  const formula = (expression: string) => ({ ...good, loop: { plant: { form: 'expression', expression, parameters: {} } } })
+
+  it.each<[string, unknown, number, string]>([
+    ['an unknown field', { ...good, colour: 'red' }, 400, 'colour'],
+    ['an unknown field inside', plant({ order: 3 }), 400, 'loop.plant.order'],
+    ['a number as text', plant({ numerator: ['1'] }), 400, 'loop.plant.numerator.0'],
+    ['no number', plant({ numerator: [null] }), 400, 'loop.plant.numerator.0'],
+    ['a zero numerator', plant({ numerator: [0] }), 400, 'loop.plant.numerator'],
+    ['a zero denominator', plant({ denominator: [0, 0] }), 400, 'loop.plant.denominator'],
+    ['an empty list', plant({ denominator: [] }), 400, 'loop.plant.denominator'],
+    ['an improper plant', plant({ numerator: [1, 0, 0, 0, 0] }), 400, 'loop.plant.numerator'],
+    ['an order beyond the limit', plant({ denominator: Array(22).fill(1) }), 400, 'loop.plant.denominator'],
+    ['a formula with an unknown symbol', formula('1/(s*q)'), 400, 'loop.plant.expression'],
+    ['a formula nested too deep', formula(`${'('.repeat(60)}1${')'.repeat(60)}/s`), 400, 'loop.plant.expression'],
+    ['a formula that is too long', formula(`1/s${'+1'.repeat(300)}`), 400, 'loop.plant.expression'],
+    ['an algebraic loop', { ...good, loop: { plant: { form: 'coefficients', numerator: [-1, 0], denominator: [1, 1] } }, designPoint: undefined, gains: { k: 1 } }, 422, ''],
+    ['a design point below the axis', { ...good, designPoint: { re: -1, im: -1 } }, 400, 'designPoint.im'],
+    ['a damping ratio beyond 1', { ...good, designPoint: { dampingRatio: 1.5, naturalFrequency: 1 } }, 400, 'designPoint.dampingRatio'],
+    ['neither point nor gains', { ...good, designPoint: undefined }, 400, 'designPoint'],
+    ['gains of another form', { ...good, designPoint: undefined, gains: { kp: 1, kd: 1 } }, 400, 'gains'],
+    ['too many samples', { ...good, response: { samples: 2001 } }, 400, 'response.samples'],
+    ['an unknown reading', { ...good, requirements: [{ reading: 'colour', limit: 'at-most', value: 1 }] }, 400, 'requirements.0.reading'],
+    ['too many requirements', { ...good, requirements: Array(17).fill({ reading: 'riseTime', limit: 'at-most', value: 1 }) }, 400, 'requirements'],
+    ['a form that is not available yet', { ...good, controller: { form: 'pid', thirdPole: -3 } }, 422, 'controller.form'],
+    ['dead time', { ...good, loop: { ...loop, deadTime: 0.1 } }, 422, 'loop.deadTime'],
+    ['a lead that cannot reach the point', { ...good, controller: { form: 'lead', poleZeroRatio: 1.0001 }, designPoint: { re: -0.1, im: 9 } }, 422, ''],
+  ])('%s is refused by field and reason', async (_what, body, status, path) => {
+    const answer = await client.post<ErrorBody>('/api/design/solve', body)
+    expect(answer.status).toBe(status)
+    expect(answer.body.statusCode).toBe(status)
+    expect(answer.body.message.length).toBeGreaterThan(10)
+    if (path !== '') expect(answer.body.data?.issues?.map(issue => issue.path)).toContain(path)
+  })
+
+  it('points at the character of a formula', async () => {
+    const answer = await client.post<ErrorBody>('/api/design/solve', formula('1/(s*q)'))
+    expect(answer.body.data?.issues).toEqual([{ path: 'loop.plant.expression', message: 'q is not among the parameters', position: 5 }])
+  })
+
+  it.each(['', '{', '{"loop": NaN}', '[1e999]', 'null', '"text"', '{"__proto__": {"loop": 1}}'])('the text %j is refused', async (text) => {
+    const answer = await client.raw<ErrorBody>('POST', '/api/design/solve', text, { 'content-type': 'application/json' })
+    expect(answer.status).toBe(400)
+    expect(JSON.stringify(answer.body)).not.toMatch(/\.mjs|\.ts:|\\n +at /)
+  })
+
+  it('refuses numbers that overflow to infinity', async () => {
+    const text = JSON.stringify(good).replace('0.5', '1e999')
+    const answer = await client.raw<ErrorBody>('POST', '/api/design/solve', text, { 'content-type': 'application/json' })
+    expect([answer.status, answer.body.data?.issues?.[0]?.path]).toEqual([400, 'designPoint.dampingRatio'])
+  })
+
+  it('says that the gain window is not available yet', async () => {
+    expect((await client.post<ErrorBody>('/api/design/gain-window', good)).body).toMatchObject({ statusCode: 422, message: expect.stringContaining('not available yet') })
+  })
+})

@@ -1,0 +1,64 @@
+import { describe, expect, it } from 'vitest'
+import { InvalidInputError, NoAnswerError } from '#shared/control/errors'
+import type { ControllerForm, Loop } from '#shared/schemas/loop'
+import { resolveController, resolveLoop } from '../../../server/utils/loop-model'
+
+const plant = { form: 'coefficients', numerator: [1], denominator: [1, 1, 0] } as const
+const asLoop = (loop: unknown) => loop as Loop
+
+function thrown(work: () => unknown): unknown {
+  try {
+    work()
+  } catch (error) {
+    return error
+  }
+  return undefined
+}
+
+describe('a loop of a request', () => {
+  it('is the same whichever way the plant is given', () => {
+    const expected = { plant: { numerator: [2], denominator: [1, 2, 5, 0] }, rateFeedback: 0 }
+    const poles = [{ re: 0, im: 0 }, { re: -1, im: 2 }, { re: -1, im: -2 }]
+    expect(resolveLoop({ plant: { form: 'coefficients', numerator: [0, 0, 2], denominator: [0, 1, 2, 5, 0] } })).toEqual(expected)
+    expect(resolveLoop({ plant: { form: 'expression', expression: 'g/(s*(s^2+2*s+5))', parameters: { g: { value: 2 } } } })).toEqual(expected)
+    expect(resolveLoop({ plant: { form: 'zeros-poles-gain', zeros: [], poles, gain: 2 } })).toEqual(expected)
+  })
+
+  it('makes pairs that differ in the last bits exact', () => {
+    const poles = [{ re: -1, im: 2 }, { re: -1.0000000001, im: -2 }]
+    expect(resolveLoop({ plant: { form: 'zeros-poles-gain', zeros: [], poles, gain: 1 } }).plant.denominator).toEqual([1, 2, 5])
+  })
+
+  it.each([
+    ['a zero numerator', { ...plant, numerator: [0, 0] }, 'loop.plant.numerator'],
+    ['a zero denominator', { ...plant, denominator: [0] }, 'loop.plant.denominator'],
+    ['an improper plant', { ...plant, numerator: [1, 0, 0, 0] }, 'loop.plant.numerator'],
+    ['an improper formula', { form: 'expression', expression: 's^3/(s+1)', parameters: {} }, 'loop.plant.expression'],
+    ['a formula that is zero', { form: 'expression', expression: '0/s', parameters: {} }, 'loop.plant.expression'],
+    ['a formula beyond order 20', { form: 'expression', expression: '1/(s+1)^21', parameters: {} }, 'loop.plant.expression'],
+    ['a missing conjugate', { form: 'zeros-poles-gain', zeros: [], poles: [{ re: 0, im: 0 }, { re: -1, im: 2 }], gain: 1 }, 'loop.plant.poles.1'],
+    ['a zero gain', { form: 'zeros-poles-gain', zeros: [], poles: [{ re: 0, im: 0 }], gain: 0 }, 'loop.plant.gain'],
+    ['more zeros than poles', { form: 'zeros-poles-gain', zeros: [{ re: -1, im: 0 }], poles: [], gain: 1 }, 'loop.plant.zeros'],
+  ])('refuses %s and names the field', (_what, wrong, path) => {
+    const error = thrown(() => resolveLoop(asLoop({ plant: wrong })))
+    expect(error).toBeInstanceOf(InvalidInputError)
+    expect((error as InvalidInputError).path).toBe(path)
+  })
+
+  it.each([
+    [{ plant, deadTime: 0.1 }, 'loop.deadTime'], [{ plant, samplePeriod: 0.1 }, 'loop.samplePeriod'],
+    [{ plant, actuatorLimit: 1 }, 'loop.actuatorLimit'], [{ plant, sensor: plant }, 'loop.sensor'],
+  ])('says what is not available yet', (loop, path) => {
+    const error = thrown(() => resolveLoop(asLoop(loop)))
+    expect(error).toBeInstanceOf(NoAnswerError)
+    expect(error).toMatchObject({ path, message: expect.stringContaining('not available yet') })
+  })
+
+  it('takes a dead time of zero as none', () => {
+    expect(resolveLoop(asLoop({ plant, deadTime: 0 })).rateFeedback).toBe(0)
+  })
+
+  it.each(['pid', 'lag'])('says that the form %s is not available yet', (form) => {
+    expect(thrown(() => resolveController({ form } as ControllerForm))).toMatchObject({ name: 'NoAnswerError', path: 'controller.form' })
+  })
+})

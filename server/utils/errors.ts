@@ -1,4 +1,4 @@
-import { isError, type H3Error } from 'h3'
+import { createError, isError, type H3Error } from 'h3'
 import { InvalidInputError, NoAnswerError } from '#shared/control/errors'
 import type { ErrorBody, Issue } from '#shared/schemas/errors'
 

@@ -1,12 +1,10 @@
-import { create, parseDependencies, type MathNode } from 'mathjs'
+import { parse, type MathNode } from 'mathjs'
 import { InvalidInputError } from '#shared/control/errors'
 import type { TransferFunction } from '#shared/control/types'
 import { limits } from '#shared/schemas/limits'
 import type { Parameter } from '#shared/schemas/loop'
 import { add, constant, divide, expand, isConstant, isZero, laplaceVariable, multiply, negate, OrderError, power, type Rational } from './rational'
 import { type Leaf, scanFormula } from './scan'
-
-const { parse } = create({ parseDependencies })
 
 /** Known without being declared; a parameter of the same name comes first. */
 const constants: Record<string, number> = { pi: Math.PI, π: Math.PI }

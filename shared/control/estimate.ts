@@ -34,8 +34,11 @@ function latestNinetyPercent(dampingRatio: number): number {
   return damped > 0 ? Math.min(4, Math.PI / damped) : 4
 }
 
-/** Step response of the standard second-order system with wn = 1. */
-function standardStep(dampingRatio: number, t: number): number {
+/**
+ * Unit step response of the standard second-order system with wn = 1 at normalised time t = wn times seconds, -1 < zeta <= 1: the curve that the
+ * rules of thumb describe.
+ */
+export function standardStep(dampingRatio: number, t: number): number {
   const damped = Math.sqrt((1 - dampingRatio) * (1 + dampingRatio))
   const angle = damped * t
   // sin(x)/x -> 1 joins the critically damped case on without a seam.

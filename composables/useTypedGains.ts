@@ -1,0 +1,46 @@
+import type { DesignSolution, Gains } from '#shared/control/types'
+import type { Complex } from '#shared/numerics/complex'
+import type { ControllerForm } from '#shared/schemas/loop'
+import { nearestRoot } from '~/utils/bench/nearest-root'
+
+/** Typed gains: the server says where they put the loop, and the design point goes there. */
+export function useTypedGains() {
+  const bench = useBenchStore()
+  const store = useSolutionStore()
+  const problem = ref<string | null>(null)
+
+  watch(() => bench.document, () => { problem.value = null })
+
+  /** One gain among the present ones; the others stay. */
+  async function typeGain(name: string, value: number) {
+    const present = store.solution?.gains
+    if (!present) return
+    const gains = { ...present, [name]: value } as Gains
+    const { loop, controller } = bench.document
+    if (controller.form === 'gain' && 'k' in gains && gains.k <= 0) {
+      problem.value = 'The locus is drawn for gains greater than 0.'
+      return
+    }
+    const asked = bench.document
+    const answer = await store.evaluateGains({ loop, controller }, gains)
+    if (bench.document !== asked) return
+    if (!('gains' in answer)) {
+      problem.value = answer.message
+      return
+    }
+    const point = pointFor(answer, controller.form, bench.document.designPoint)
+    if (point) bench.moveDesignPoint(point)
+    else problem.value = 'With these gains every root is real, and no design point of this form stands for them.'
+  }
+
+  return { typeGain, problem }
+}
+
+/**
+ * The root that stands for the gains: the dominant one. Forms with two gains are given back by a complex pair alone (at a real point the
+ * placement is another one, a double root), so there the pair nearest to the present point stands in.
+ */
+function pointFor(answer: DesignSolution, form: ControllerForm['form'], present: Complex): Complex | null {
+  if (form === 'gain' || answer.designPoint.im > 0) return answer.designPoint
+  return nearestRoot(answer.closedLoopPoles.filter(pole => pole.im > 0), present)
+}

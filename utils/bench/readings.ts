@@ -1,0 +1,63 @@
+import type { DesignSolution, ReadingName, Readings, Requirement } from '#shared/control/types'
+import { formatFigure, formatFixed, formatPlain } from './format'
+
+export interface ReadingDescription {
+  name: ReadingName
+  label: string
+  unit: string
+  /** Decimals for figures of a natural size, else significant digits. */
+  decimals?: number
+  digits?: number
+  /** The sense in which limits of this reading are usually set. */
+  usualLimit: Requirement['limit']
+  /** A limit that a new requirement begins with. */
+  usualValue: number
+  estimate?: keyof DesignSolution['estimate']
+}
+
+/** The readings in the order in which an engineer asks for them. */
+export const readingDescriptions: readonly ReadingDescription[] = [
+  { name: 'overshootPercent', label: 'Overshoot', unit: '%', decimals: 2, usualLimit: 'at-most', usualValue: 10, estimate: 'overshootPercent' },
+  { name: 'settlingTime', label: 'Settling time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'settlingTime' },
+  { name: 'riseTime', label: 'Rise time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'riseTime' },
+  { name: 'peakTime', label: 'Peak time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'peakTime' },
+  { name: 'phaseMarginDeg', label: 'Phase margin', unit: '°', decimals: 1, usualLimit: 'at-least', usualValue: 50 },
+  { name: 'gainMarginDb', label: 'Gain margin', unit: 'dB', decimals: 1, usualLimit: 'at-least', usualValue: 8 },
+  { name: 'delayMargin', label: 'Delay margin', unit: 's', digits: 3, usualLimit: 'at-least', usualValue: 0.01 },
+  { name: 'sensitivityPeak', label: 'Sensitivity peak', unit: '', digits: 3, usualLimit: 'at-most', usualValue: 1.6 },
+  { name: 'bandwidth', label: 'Bandwidth', unit: 'rad/s', digits: 3, usualLimit: 'at-least', usualValue: 1 },
+  { name: 'steadyStateErrorStep', label: 'Step error', unit: '', digits: 3, usualLimit: 'at-most', usualValue: 0.05 },
+  { name: 'steadyStateErrorRamp', label: 'Ramp error', unit: 's', digits: 3, usualLimit: 'at-most', usualValue: 1 },
+  { name: 'peakEffort', label: 'Peak effort', unit: '', digits: 4, usualLimit: 'at-most', usualValue: 10 },
+  { name: 'dampingRatio', label: 'Damping ratio', unit: '', digits: 3, usualLimit: 'at-least', usualValue: 0.5 },
+]
+
+export function describeReading(name: ReadingName): ReadingDescription {
+  return readingDescriptions.find(description => description.name === name)!
+}
+
+/** A reading with its unit; a dash where the figure does not exist. */
+export function formatReading({ unit, decimals, digits }: ReadingDescription, value: number | null): string {
+  if (value === null) return '–'
+  return withUnit(decimals === undefined ? formatFigure(value, digits) : formatFixed(value, decimals), unit)
+}
+
+/** A limit in short: at most 12 % becomes ≤ 12 %. */
+export function formatLimit({ limit, value, reading }: Requirement): string {
+  return `${limit === 'at-most' ? '≤' : '≥'}\u202F${withUnit(formatPlain(value), describeReading(reading).unit)}`
+}
+
+/** A limit in words. */
+export function sayLimit({ limit, value, reading }: Requirement): string {
+  return `${limit === 'at-most' ? 'at most' : 'at least'} ${withUnit(formatPlain(value), describeReading(reading).unit)}`
+}
+
+function withUnit(figure: string, unit: string): string {
+  if (unit === '') return figure
+  return unit === '°' ? `${figure}°` : `${figure}\u202F${unit}`
+}
+
+/** The damping ratio is a reading only by its verdict: it is that of the least damped root. */
+export function readingValue(name: ReadingName, readings: Readings): number | null | undefined {
+  return name === 'dampingRatio' ? undefined : readings[name]
+}

@@ -1,10 +1,9 @@
 import type { Context } from 'konva/lib/Context'
-import { dampingRatioOf, overshootFromDamping } from '#shared/control/design-point'
-import { formatNumber } from '~/utils/plane/labels'
 import { nearest } from '~/utils/plane/marks'
 import { rayAngle, visibleRay } from '~/utils/plane/ray'
 import { isInView, toScreen, type ScreenPoint } from '~/utils/plane/viewport'
 import { paint } from '~/utils/plane/colors'
+import { paintGrip } from './paint-grip'
 import { paintPointLabel } from './paint-point-label'
 import { circle, font, lozenge, strokeLines, writeText } from './paint-tools'
 import type { HandScene } from './plane-scene'
@@ -55,8 +54,10 @@ function paintMeetings(context: Context, { viewport, colors, meetings, point }: 
 function paintReached(context: Context, { viewport, colors, point, roots, onLocus, stale }: HandScene): void {
   const root = nearest(roots, point)
   if (onLocus || !root) return
+  const [from, to] = [toScreen(viewport, point), toScreen(viewport, root)]
+  if (Math.hypot(to.x - from.x, to.y - from.y) < ringRadius) return
   context.setLineDash([5, 4])
-  strokeLines(context, [[toScreen(viewport, point), toScreen(viewport, root)]], paint(stale ? colors.slate : colors.sea, stale ? 0.5 : 1), 1.3)
+  strokeLines(context, [[from, to]], paint(stale ? colors.slate : colors.sea, stale ? 0.5 : 1), 1.3)
   context.setLineDash([])
 }
 
@@ -77,28 +78,6 @@ function paintRoots(context: Context, { viewport, colors, roots, stale }: HandSc
       context.fill()
     }
   }
-}
-
-function paintGrip(context: Context, { viewport, colors, point, grip, turning }: HandScene): void {
-  if (!grip) return
-  circle(context, grip, 9)
-  context.fillStyle = paint(turning ? colors.brass : colors.paper)
-  context.fill()
-  context.strokeStyle = paint(colors.brass)
-  context.lineWidth = 2.2
-  context.stroke()
-  const ratio = dampingRatioOf(point)
-  const first = `damping ratio ${formatNumber(ratio, 3, 0.5)}`
-  const second = ratio > 0 ? `overshoot ${formatNumber(overshootFromDamping(ratio), 3, 10)} % if second order` : 'grows if second order'
-  context.font = font(13, 600)
-  const width = Math.max(context.measureText(first).width, context.measureText(second).width)
-  const toLeft = grip.x - 18 - width > 6
-  const style = { halo: paint(colors.paper), align: toLeft ? 'right' as const : 'left' as const }
-  const x = toLeft ? grip.x - 17 : grip.x + 17
-  const y = Math.min(viewport.height - 24, Math.max(10, grip.y - 7))
-  writeText(context, first, { x, y }, { ...style, color: paint(colors.brassInk) })
-  context.font = font(12)
-  writeText(context, second, { x, y: y + 17 }, { ...style, color: paint(colors.slate) })
 }
 
 /** The angle left over, as an arc at the point asked for, opened from the direction of the ray. */

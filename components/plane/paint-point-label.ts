@@ -1,9 +1,10 @@
 import type { Context } from 'konva/lib/Context'
 import { abs, conjugate } from '#shared/numerics/complex'
-import { formatNumber, formatPoint, placeLabel, placesAlong } from '~/utils/plane/labels'
+import { formatAngle, formatNumber, formatPoint, placeLabel, placesAlong } from '~/utils/plane/labels'
 import { rayAngle, visibleRay } from '~/utils/plane/ray'
 import { toScreen, type ScreenPoint } from '~/utils/plane/viewport'
 import { paint } from '~/utils/plane/colors'
+import { gripLabel } from './paint-grip'
 import { font, writeText } from './paint-tools'
 import type { HandScene } from './plane-scene'
 
@@ -20,10 +21,11 @@ export function paintPointLabel(context: Context, scene: HandScene): void {
   context.font = font(15, 700)
   const width = Math.max(small, context.measureText(first).width)
   const mark = toScreen(viewport, point)
-  const placed = placeLabel(mark, { width, height: 36 }, clearance, takenPlaces(scene, mark), viewport, scene.memory.labelPlace)
+  const placed = placeLabel(mark, { width, height: 36 }, clearance, takenPlaces(context, scene, mark), viewport, scene.memory.labelPlace)
   scene.memory.labelPlace = placed.index
   const x = placed.align === 'right' ? placed.at.x + width : placed.at.x
   const style = { halo: paint(colors.paper), align: placed.align }
+  context.font = font(15, 700)
   writeText(context, first, { x, y: placed.at.y + 9 }, { ...style, color: paint(colors.vermilionInk) })
   context.font = font(12)
   writeText(context, second, { x, y: placed.at.y + 28 }, { ...style, color: paint(colors.slate, stale ? 0.7 : 1) })
@@ -32,18 +34,20 @@ export function paintPointLabel(context: Context, scene: HandScene): void {
 function standing({ onLocus, leftoverDeg, stale }: HandScene): string {
   if (stale) return 'waiting for the server'
   if (onLocus) return 'on the locus'
-  return leftoverDeg === null ? 'off the locus' : `${formatNumber(leftoverDeg, 3, Math.max(10, Math.abs(leftoverDeg)))}° left over`
+  return leftoverDeg === null ? 'off the locus' : `${formatAngle(leftoverDeg)} left over`
 }
 
-function takenPlaces({ viewport, point, grip, marks, roots, meetings, flags }: HandScene, mark: ScreenPoint): ScreenPoint[] {
+function takenPlaces(context: Context, scene: HandScene, mark: ScreenPoint): ScreenPoint[] {
+  const { viewport, point, marks, roots, meetings, flags } = scene
   const places: ScreenPoint[] = []
   for (const angle of [rayAngle(point), -rayAngle(point)]) {
     const ray = visibleRay(viewport, angle)
     if (ray) places.push(...placesAlong(ray[0], ray[1], mark, near))
   }
-  if (grip) {
-    const left = grip.x > 240 ? grip.x - 210 : grip.x
-    for (const dy of [-8, 4, 16]) places.push(...placesAlong({ x: left, y: grip.y + dy }, { x: left + 210, y: grip.y + dy }, mark, near))
+  const label = gripLabel(context, scene)
+  if (label) {
+    const left = label.align === 'right' ? label.x - label.width : label.x
+    for (const dy of [-8, 0, 8, 17, 24]) places.push(...placesAlong({ x: left, y: label.y + dy }, { x: left + label.width, y: label.y + dy }, mark, near))
   }
   for (const taken of [...marks, ...roots, ...roots.map(conjugate), ...meetings]) places.push(toScreen(viewport, taken))
   for (const flag of flags) {

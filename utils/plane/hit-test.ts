@@ -31,9 +31,11 @@ export function hitTest(at: ScreenPoint, targets: Targets, touch: boolean): Hit 
   const toPoint = away(point)
   const toGrip = targets.grip ? away(targets.grip) : Infinity
   const tick = nearestTick(at, targets, reach.tick[how])
-  const tickWins = tick !== null && away(tick.at) < toPoint && Math.hypot(tick.at.x - point.x, tick.at.y - point.y) > 1
+  // A point that stands within a few pixels of a meeting, but not on it, is brought onto it by a click.
+  const tickWins = tick !== null && (away(tick.at) < toPoint || Math.hypot(tick.at.x - point.x, tick.at.y - point.y) < 4)
   const kind = toGrip <= reach.grip[how] && toGrip < toPoint ? 'grip' : toPoint <= reach.point[how] ? 'point' : 'plane'
-  return { kind, tick: tickWins && kind !== 'grip' ? tick.meeting : null }
+  const standsThere = tick !== null && tick.meeting.re === targets.designPoint.re && tick.meeting.im === targets.designPoint.im
+  return { kind, tick: tickWins && !standsThere && kind !== 'grip' ? tick.meeting : null }
 }
 
 /** The meeting nearest to a place on the screen, within a radius. */

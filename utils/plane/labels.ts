@@ -20,6 +20,13 @@ export function formatPoint(point: Complex): string {
   return `${formatNumber(point.re, 3, size)} ${sign} ${formatNumber(Math.abs(point.im), 3, size)}j`
 }
 
+/** An angle in degrees as a label says it: exact enough to see how far the point is from the locus. */
+export function formatAngle(degrees: number): string {
+  const size = Math.abs(degrees)
+  if (size > 0 && size < 0.005) return 'under 0.01°'
+  return `${formatNumber(degrees, 3, size >= 10 ? size : 1)}°`
+}
+
 export interface Placement {
   /** Which candidate was chosen, to be handed back next time. */
   index: number
@@ -58,4 +65,52 @@ export function placesAlong(a: ScreenPoint, b: ScreenPoint, mark: ScreenPoint, n
   const [from, to] = piece
   const count = Math.max(1, Math.ceil(Math.hypot(to.x - from.x, to.y - from.y) / spacing))
   return Array.from({ length: count + 1 }, (_, n) => ({ x: from.x + (to.x - from.x) * n / count, y: from.y + (to.y - from.y) * n / count }))
+}
+
+export interface AlongPlacement {
+  /** Middle of the words on the edge itself. */
+  middle: ScreenPoint
+  /** To turn the words by, in radians, so that they never stand on their head. */
+  angle: number
+  /** Offset of the words' middle line from the edge, after turning. */
+  offset: number
+  /** How many of the taken places the words cover all the same. */
+  covered: number
+}
+
+/**
+ * The place of words along an edge where they cover the fewest of the given places, as near as possible to the end they prefer; null when the edge
+ * is too short for them. `right` puts them on the right-hand side seen from the inner end.
+ */
+export function placeAlong(
+  [inner, outer]: readonly [ScreenPoint, ScreenPoint], width: number, right: boolean, prefer: 'inner' | 'outer', taken: readonly ScreenPoint[],
+): AlongPlacement | null {
+  const length = Math.hypot(outer.x - inner.x, outer.y - inner.y)
+  const pad = 16
+  const room = length - width - 2 * pad
+  if (room < 0) return null
+  const unit = { x: (outer.x - inner.x) / length, y: (outer.y - inner.y) / length }
+  const side = right ? 1 : -1
+  const flipped = unit.x < -1e-9
+  const count = Math.max(1, Math.ceil(room / 16))
+  let best: { along: number, covered: number, cost: number } | null = null
+  for (let n = 0; n <= count; n++) {
+    const from = prefer === 'inner' ? n : count - n
+    const along = pad + width / 2 + room * from / count
+    const covered = taken.filter(({ x, y }) => {
+      const dx = x - inner.x
+      const dy = y - inner.y
+      const across = side * (dy * unit.x - dx * unit.y)
+      return Math.abs(dx * unit.x + dy * unit.y - along) < width / 2 + 6 && across > 2 && across < 22
+    }).length
+    const cost = covered + 0.05 * n
+    if (!best || cost < best.cost) best = { along, covered, cost }
+  }
+  const { along, covered } = best!
+  return {
+    middle: { x: inner.x + along * unit.x, y: inner.y + along * unit.y },
+    angle: Math.atan2(unit.y, unit.x) + (flipped ? Math.PI : 0),
+    offset: (flipped ? -side : side) * 12,
+    covered,
+  }
 }

@@ -11,9 +11,10 @@ export type Region =
 
 const trim = (value: number) => String(Number(value.toPrecision(4))).replace('-', '−')
 
-/** The regions that a list of requirements hatches off; readings that have no place in the plane give none. */
+/** The regions that a list of requirements hatches off, upright edges first; readings that have no place in the plane give none. */
 export function forbiddenRegions(requirements: readonly Requirement[]): Region[] {
-  return requirements.flatMap(requirement => regionOf(requirement) ?? [])
+  const regions = requirements.flatMap(requirement => regionOf(requirement) ?? [])
+  return [...regions.filter(({ kind }) => kind === 'decay'), ...regions.filter(({ kind }) => kind === 'damping')]
 }
 
 function regionOf({ reading, limit, value }: Requirement): Region | null {
@@ -44,7 +45,8 @@ export interface RegionDrawing {
   lean: Lean
   labels: string[]
   /** The forbidden side, where the words stand, lies to the right of the last edge seen from its inner end. */
-  labelBelow: boolean
+  labelRight: boolean
+  preferEnd: 'inner' | 'outer'
 }
 
 /** A region as polygons of the present view. */
@@ -62,7 +64,8 @@ function drawDecay(region: Region & { kind: 'decay' }, viewport: Viewport, view:
     edges: [[{ x, y: viewport.height }, { x, y: 0 }]],
     lean: 'falling',
     labels: region.labels,
-    labelBelow: region.forbids === 'slower',
+    labelRight: region.forbids === 'slower',
+    preferEnd: 'inner',
   }
 }
 
@@ -90,6 +93,7 @@ function drawDamping(region: Region & { kind: 'damping' }, viewport: Viewport, v
     edges: halves.map(({ edge }) => edge),
     lean: 'rising',
     labels: region.labels,
-    labelBelow: region.forbids === 'more',
+    labelRight: region.forbids === 'more',
+    preferEnd: 'outer',
   }
 }

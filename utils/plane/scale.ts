@@ -25,7 +25,7 @@ export function decimalsOf(step: number): number {
 export function formatMark(value: number, step: number): string {
   if (value === 0) return '0'
   const size = Math.abs(value)
-  const text = size >= 1e5 || step < 1e-4 ? scientific(size, step) : size.toFixed(decimalsOf(step))
+  const text = size >= 1e5 || step < 1e-4 ? scientific(size, step) : trimZeros(size.toFixed(decimalsOf(step)))
   return (value < 0 ? '−' : '') + text
 }
 
@@ -36,10 +36,12 @@ export function formatImaginaryMark(value: number, step: number): string {
   return `${text.replace(/^(−?)1$/, '$1')}j`
 }
 
+const trimZeros = (decimal: string) => decimal.includes('.') ? decimal.replace(/\.?0+$/, '') : decimal
+
 function scientific(size: number, step: number): string {
   const digits = Math.max(0, Math.floor(Math.log10(size) + 1e-9) - Math.floor(Math.log10(step) + 1e-9))
   const [mantissa = '', exponent = ''] = size.toExponential(Math.min(digits, 15)).split('e')
-  return `${mantissa}e${exponent.replace('+', '').replace('-', '−')}`
+  return `${trimZeros(mantissa)}e${exponent.replace('+', '').replace('-', '−')}`
 }
 
 /**

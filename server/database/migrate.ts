@@ -13,23 +13,30 @@ export interface Migration {
  */
 export function migrate(sqlite: Database.Database, migrations: Migration[]): number {
   sqlite.exec('CREATE TABLE IF NOT EXISTS applied_migrations (hash TEXT PRIMARY KEY, made_at INTEGER NOT NULL, applied_at INTEGER NOT NULL)')
-  const known = new Set(sqlite.prepare('SELECT hash FROM applied_migrations').pluck().all())
-  const pending = migrations.filter(migration => !known.has(migration.hash)).sort((a, b) => a.folderMillis - b.folderMillis)
-  if (pending.length === 0) return 0
+  refuseNewer(sqlite, migrations)
   sqlite.pragma('foreign_keys = OFF')
   try {
-    for (const migration of pending) apply(sqlite, migration)
+    return [...migrations].sort((a, b) => a.folderMillis - b.folderMillis).filter(migration => apply(sqlite, migration)).length
   } finally {
     sqlite.pragma('foreign_keys = ON')
   }
-  return pending.length
 }
 
-function apply(sqlite: Database.Database, migration: Migration) {
-  sqlite.transaction(() => {
+/** An older program would misread tables that a newer one changed. */
+function refuseNewer(sqlite: Database.Database, migrations: Migration[]) {
+  const known = new Set(migrations.map(migration => migration.hash))
+  const applied = sqlite.prepare<[], string>('SELECT hash FROM applied_migrations').pluck().all()
+  if (applied.some(hash => !known.has(hash))) throw new Error('This database was made by a newer version of the product; nothing was changed.')
+}
+
+/** False when it was applied before, perhaps a moment ago by another process: hence the question inside the transaction. */
+function apply(sqlite: Database.Database, migration: Migration): boolean {
+  return sqlite.transaction(() => {
+    if (sqlite.prepare('SELECT 1 FROM applied_migrations WHERE hash = ?').get(migration.hash) !== undefined) return false
     for (const statement of migration.sql) sqlite.exec(statement)
     const broken = sqlite.pragma('foreign_key_check') as unknown[]
     if (broken.length > 0) throw new Error(`A migration would leave ${broken.length} rows without their parent; nothing was changed.`)
     sqlite.prepare('INSERT INTO applied_migrations VALUES (?, ?, ?)').run(migration.hash, migration.folderMillis, Date.now())
+    return true
   }).immediate()
 }

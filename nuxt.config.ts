@@ -45,8 +45,12 @@ export default defineNuxtConfig({
     // Before Nuxt's own error page: failures under /api answer in the form of the contract.
     'nitro:init': (nitro) => {
       nitro.options.errorHandler = [apiErrorHandler, ...[nitro.options.errorHandler].flat()]
+      const routes = () => nitro.scannedHandlers.filter(({ route }) => route?.startsWith('/api/')).map(({ route, method }) => ({ route, method }))
+      nitro.options.virtual['#api-routes'] = () => `export default ${JSON.stringify(routes())}`
     },
   },
+  // Static files are served before any handler of ours.
+  routeRules: { '/**': { headers: { 'X-Content-Type-Options': 'nosniff' } } },
   nitro: {
     virtual: { '#migrations': () => `export default ${JSON.stringify(readMigrationFiles({ migrationsFolder }))}` },
   },

@@ -4,7 +4,7 @@ import { errorBody, toFailure } from './utils/errors'
 
 /** Failures under /api answer in the form of the contract; pages go on to Nuxt's own handler. */
 export default defineNitroErrorHandler((error, event) => {
-  if (!event.path.startsWith('/api/') || event.handled) return
+  if (!/^\/api([/?]|$)/.test(event.path) || event.handled) return
   const failed = toFailure(error.unhandled ? error.cause ?? error : error)
   const body = errorBody(failed)
   if (body.statusCode >= 500) console.error('[api]', event.method, event.path.split('?')[0], error.cause ?? error)

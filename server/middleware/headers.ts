@@ -14,7 +14,9 @@ export default defineEventHandler((event) => {
   if (path.startsWith('/api/')) {
     setResponseHeader(event, 'Content-Security-Policy', `default-src 'none'; frame-ancestors 'none'`)
   }
-  if (path.startsWith('/api/') || shared || path.startsWith('/scenarios')) setResponseHeader(event, 'Cache-Control', 'no-store')
+  // A page is rendered for whoever asks: their name may stand on it, a scenario of theirs perhaps too.
+  const open = path === '/' || path === '/sign-in' || path === '/register'
+  setResponseHeader(event, 'Cache-Control', open ? 'private, no-cache' : 'no-store')
   if (useRuntimeConfig(event).public.siteUrl.startsWith('https://')) {
     setResponseHeader(event, 'Strict-Transport-Security', `max-age=${year}; includeSubDomains`)
   }

@@ -18,4 +18,7 @@ export default defineNitroPlugin((nitro) => {
       `frame-ancestors 'none'`,
     ].join('; '))
   })
+  nitro.hooks.hook('render:response', (response) => {
+    delete response.headers?.['x-powered-by']
+  })
 })

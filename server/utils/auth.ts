@@ -13,8 +13,15 @@ declare module '#auth-utils' {
 
 /** The signed-in person, looked up afresh at each request; undefined for a guest. */
 export async function currentUser(event: H3Event): Promise<User | undefined> {
-  const sid = (await getUserSession(event)).secure?.sid
+  const sid = await sessionId(event)
   return sid === undefined ? undefined : userOfSession(sid)
+}
+
+/** The random id in the sealed cookie. Without a cookie nothing is asked, because asking would hand every guest one. */
+async function sessionId(event: H3Event): Promise<string | undefined> {
+  const { name } = useRuntimeConfig(event).session
+  if (name === undefined || getCookie(event, name) === undefined) return undefined
+  return (await getUserSession(event)).secure?.sid
 }
 
 /** Guard: the signed-in person and the teams they belong to, or 401. */
@@ -35,8 +42,9 @@ export async function signIn(event: H3Event, user: User) {
 
 /** Ends the session on the server, so that a replayed cookie is worth nothing, and clears the cookie. */
 export async function signOut(event: H3Event) {
-  const sid = (await getUserSession(event)).secure?.sid
-  if (sid !== undefined) endSession(sid)
+  const sid = await sessionId(event)
+  if (sid === undefined) return
+  endSession(sid)
   await clearUserSession(event)
 }
 

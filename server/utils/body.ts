@@ -22,15 +22,22 @@ function validate<S extends z.ZodType>(input: unknown, schema: S): z.output<S> {
   return result.data
 }
 
-/** The body as text. Declared or streamed, no more than `most` bytes are ever kept. */
+/**
+ * The body as text. Declared or streamed, no more than `most` bytes are ever kept; what comes after them is read and dropped, so that
+ * the answer still reaches whoever sends it.
+ */
 async function readCapped(event: H3Event, most: number): Promise<string> {
   const tooLarge = () => failure(413, `The body is larger than ${Math.floor(most / 1024)} KiB.`)
   if (Number(getRequestHeader(event, 'content-length') ?? 0) > most) throw tooLarge()
   const chunks: Buffer[] = []
   let size = 0
-  for await (const chunk of event.node.req as AsyncIterable<Buffer>) {
+  const request = event.node.req
+  for await (const chunk of request.iterator({ destroyOnReturn: false }) as AsyncIterable<Buffer>) {
     size += chunk.length
-    if (size > most) throw tooLarge()
+    if (size > most) {
+      request.resume()
+      throw tooLarge()
+    }
     chunks.push(chunk)
   }
   return Buffer.concat(chunks).toString('utf8')

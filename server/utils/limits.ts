@@ -12,10 +12,20 @@ const limiters = {
   write: new RateLimiterMemory({ points: 600, duration: 60 }),
 }
 
-/** The caller's address. X-Forwarded-For counts only when a proxy of one's own is configured, or anyone could escape a limit by forging it. */
+/** Event streams open at the same time from one address: a page holds one. */
+const streamsPerAddress = 200
+const openStreams = new Map<string, number>()
+
+const isOff = (event: H3Event) => useRuntimeConfig(event).rateLimits === 'off'
+
+/**
+ * The caller's address. X-Forwarded-For counts only when a proxy of one's own is configured, and then only its last entry, which that
+ * proxy wrote: the entries before it come from the caller, who could escape a limit by inventing them.
+ */
 export function callerAddress(event: H3Event): string {
-  const trusted = useRuntimeConfig(event).trustProxy
-  return getRequestIP(event, { xForwardedFor: trusted === true || String(trusted) === 'true' }) ?? 'unknown'
+  const direct = event.node.req.socket?.remoteAddress ?? 'unknown'
+  if (String(useRuntimeConfig(event).trustProxy) !== 'true') return direct
+  return getRequestHeader(event, 'x-forwarded-for')?.split(',').at(-1)?.trim() || direct
 }
 
 async function consume(name: keyof typeof limiters, key: string) {
@@ -27,19 +37,44 @@ async function consume(name: keyof typeof limiters, key: string) {
   }
 }
 
+function refuse(event: H3Event, waitSeconds: number) {
+  setResponseHeader(event, 'Retry-After', waitSeconds)
+  return failure(429, `That was too often; try again in ${waitSeconds} s.`)
+}
+
 /** Guard: one more request of this kind, or 429 with Retry-After. */
 export async function limit(event: H3Event, name: keyof typeof limiters, key = callerAddress(event)) {
-  if (useRuntimeConfig(event).rateLimits === 'off') return
+  if (isOff(event)) return
   const wait = await consume(name, key)
   if (wait === undefined) return
-  setResponseHeader(event, 'Retry-After', wait)
-  throw failure(429, `That was too often; try again in ${wait} s.`)
+  console.warn('[limit]', name, callerAddress(event))
+  throw refuse(event, wait)
 }
 
 export const limitCompute = (event: H3Event) => limit(event, 'compute')
 
+const accountFromAddress = (event: H3Event, email: string) => `${email} ${callerAddress(event)}`
+
 /** By account together with address: a stranger's wrong guesses do not lock the owner out elsewhere. */
 export async function limitSignIn(event: H3Event, email: string) {
   await limit(event, 'signInFromAddress')
-  await limit(event, 'signInToAccount', `${email} ${callerAddress(event)}`)
+  await limit(event, 'signInToAccount', accountFromAddress(event, email))
+}
+
+/** The right password wipes out the wrong guesses before it. */
+export async function forgiveSignIn(event: H3Event, email: string) {
+  await limiters.signInToAccount.delete(accountFromAddress(event, email))
+}
+
+/** Guard: one more open stream from this address. The answer takes it off the count again. */
+export function limitStreams(event: H3Event): () => void {
+  const address = callerAddress(event)
+  const count = openStreams.get(address) ?? 0
+  if (count >= streamsPerAddress && !isOff(event)) throw refuse(event, 30)
+  openStreams.set(address, count + 1)
+  return () => {
+    const left = (openStreams.get(address) ?? 1) - 1
+    if (left > 0) openStreams.set(address, left)
+    else openStreams.delete(address)
+  }
 }

@@ -101,7 +101,7 @@ describe('what comes from elsewhere', () => {
   it('answers 404 in JSON for an address that is not there', async () => {
     const answer = await new Client(server.origin).get('/api/nothing/here')
     expect(answer.status).toBe(404)
-    expect(answer.body).toEqual({ statusCode: 404, statusMessage: 'Not Found', message: 'There is no such address or method in this interface.' })
+    expect(answer.body).toEqual({ statusCode: 404, statusMessage: 'Not Found', message: 'There is no such address in this interface.' })
   })
 })
 

@@ -3,7 +3,7 @@ import { userByEmail } from '../../database/queries/users'
 import { publicUser, signIn } from '../../utils/auth'
 import { readValidated } from '../../utils/body'
 import { failure } from '../../utils/errors'
-import { callerAddress, limitSignIn } from '../../utils/limits'
+import { callerAddress, forgiveSignIn, limitSignIn } from '../../utils/limits'
 
 /** A hash that no password meets: an unknown account costs the same work as a wrong password. */
 let decoy: Promise<string> | undefined
@@ -18,6 +18,7 @@ export default defineEventHandler(async (event) => {
     console.warn('[sign-in refused]', callerAddress(event))
     throw failure(401, 'The address and the password do not belong together.')
   }
+  await forgiveSignIn(event, email)
   await signIn(event, user)
   return { user: publicUser(user) }
 })

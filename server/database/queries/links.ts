@@ -33,8 +33,10 @@ export function linkByToken(token: string, now = new Date()): Link | undefined {
     )).get()?.link
 }
 
-export function markLinkUsed(id: string) {
-  database().update(links).set({ lastUsedAt: new Date() }).where(eq(links.id, id)).run()
+/** Notes that the link was opened, to the minute: a reload writes nothing. */
+export function markLinkUsed({ id, lastUsedAt }: Link, now = new Date()) {
+  if (lastUsedAt !== null && now.getTime() - lastUsedAt.getTime() < 60_000) return
+  database().update(links).set({ lastUsedAt: now }).where(eq(links.id, id)).run()
 }
 
 /** All that a visitor may see, field by field: nothing travels because it happens to stand in the row. */

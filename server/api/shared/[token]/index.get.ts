@@ -6,6 +6,6 @@ export default defineEventHandler((event) => {
   const link = requireLink(event)
   const shared = sharedScenario(link)
   if (shared === undefined) throw notFound()
-  markLinkUsed(link.id)
+  markLinkUsed(link)
   return shared
 })

@@ -7,11 +7,20 @@ import { readColors, readDayColors, type PlaneColors } from '~/utils/plane/color
  */
 export function usePlaneColors(onPrint: () => void): { colors: Readonly<ShallowRef<PlaneColors | null>> } {
   const colors = shallowRef<PlaneColors | null>(null)
-  const refresh = () => { colors.value = readColors() }
+  let printing = false
+  const refresh = () => {
+    if (!printing) colors.value = readColors()
+  }
   const print = () => {
+    // Before the colours are read: reading them touches the theme, which the watch below would answer.
+    printing = true
     colors.value = readDayColors()
     // The flush that carries the colours to the canvas runs before the browser goes on to print.
     void nextTick(onPrint)
+  }
+  const printed = () => {
+    printing = false
+    refresh()
   }
   const themeWatch = import.meta.client ? new MutationObserver(refresh) : null
 
@@ -19,7 +28,7 @@ export function usePlaneColors(onPrint: () => void): { colors: Readonly<ShallowR
     refresh()
     themeWatch?.observe(document.documentElement, { attributeFilter: ['data-theme'] })
     window.addEventListener('beforeprint', print)
-    window.addEventListener('afterprint', refresh)
+    window.addEventListener('afterprint', printed)
     // A canvas does not ask for its fonts: fetch them, then paint again.
     const weights = [500, 600, 700].map(weight => document.fonts.load(`${weight} 12px Manrope`))
     void Promise.allSettled(weights).then(refresh)
@@ -27,7 +36,7 @@ export function usePlaneColors(onPrint: () => void): { colors: Readonly<ShallowR
   onBeforeUnmount(() => {
     themeWatch?.disconnect()
     window.removeEventListener('beforeprint', print)
-    window.removeEventListener('afterprint', refresh)
+    window.removeEventListener('afterprint', printed)
   })
   return { colors }
 }

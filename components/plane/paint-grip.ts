@@ -2,6 +2,7 @@ import type { Context } from 'konva/lib/Context'
 import { dampingRatioOf, overshootFromDamping } from '#shared/control/design-point'
 import { formatNumber } from '~/utils/plane/labels'
 import { paint } from '~/utils/plane/colors'
+import { rayAngle } from '~/utils/plane/ray'
 import { circle, font, writeText } from './paint-tools'
 import type { HandScene } from './plane-scene'
 
@@ -30,8 +31,11 @@ export function gripLabel(context: Context, { viewport, point, grip }: HandScene
   const second = fullWidth <= room || ratio <= 0 ? full : overshoot
   const width = Math.max(firstWidth, context.measureText(second).width)
   const align = grip.x - 24 - width > 0 ? 'right' : 'left'
-  const y = Math.min(viewport.height - 24, Math.max(10, grip.y - 7))
-  return { first, second, x: align === 'right' ? grip.x - 17 : grip.x + 17, y, width, align }
+  // Beside a ray that lies flat the words would stand on it: then they stand above.
+  const flat = Math.sin(rayAngle(point)) < 0.25
+  const y = Math.min(viewport.height - 24, Math.max(10, grip.y - (flat ? 38 : 7)))
+  const away = flat ? -9 : 17
+  return { first, second, x: align === 'right' ? grip.x - away : grip.x + away, y, width, align }
 }
 
 export function paintGrip(context: Context, scene: HandScene): void {

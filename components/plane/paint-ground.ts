@@ -9,7 +9,7 @@ import { paint, type PlaneColors } from '~/utils/plane/colors'
 import { font, strokeLines, writeText } from './paint-tools'
 import type { GroundScene } from './plane-scene'
 
-const hatchSpacing = 8
+const hatchSpacing = 9
 const leastGrid = 64
 /** Numbers of an axis below the view stand above the line of hints and buttons. */
 const footerHeight = 48
@@ -52,7 +52,7 @@ function horizontal(viewport: Viewport, im: number): [ScreenPoint, ScreenPoint] 
 
 function hatch(context: Context, { colors }: GroundScene, drawing: RegionDrawing, origin: ScreenPoint): void {
   const lines = drawing.polygons.flatMap(polygon => hatchLines(polygon, hatchSpacing, drawing.lean, origin))
-  strokeLines(context, lines, paint(colors.slate, 0.22), 1)
+  strokeLines(context, lines, paint(colors.slate, 0.17), 1)
 }
 
 /** The limit lines, and the words of each along its last edge, on the forbidden side and clear of the other lines. */

@@ -17,7 +17,7 @@ export function paintLocus(context: Context, scene: LocusScene): void {
   context.beginPath()
   for (const run of runs) tracePolyline(context, run)
   context.strokeStyle = paint(colors.slate)
-  context.lineWidth = 1.75
+  context.lineWidth = 2
   context.lineJoin = 'round'
   context.stroke()
   context.fillStyle = paint(colors.slate)

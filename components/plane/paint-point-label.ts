@@ -1,5 +1,5 @@
 import type { Context } from 'konva/lib/Context'
-import { abs, conjugate } from '#shared/numerics/complex'
+import { abs } from '#shared/numerics/complex'
 import { formatAngle, formatNumber, formatPoint, placeLabel, placesAlong } from '~/utils/plane/labels'
 import { rayAngle, visibleRay } from '~/utils/plane/ray'
 import { toScreen, type ScreenPoint } from '~/utils/plane/viewport'
@@ -23,7 +23,7 @@ export function paintPointLabel(context: Context, scene: HandScene): void {
   const mark = toScreen(viewport, point)
   const placed = placeLabel(mark, { width, height: 36 }, clearance, takenPlaces(context, scene, mark), viewport, scene.memory.labelPlace)
   scene.memory.labelPlace = placed.index
-  const x = placed.align === 'right' ? placed.at.x + width : placed.at.x
+  const x = placed.at.x + width * { left: 0, center: 0.5, right: 1 }[placed.align]
   const style = { halo: paint(colors.paper), align: placed.align }
   context.font = font(15, 700)
   writeText(context, first, { x, y: placed.at.y + 9 }, { ...style, color: paint(colors.vermilionInk) })
@@ -49,7 +49,11 @@ function takenPlaces(context: Context, scene: HandScene, mark: ScreenPoint): Scr
     const left = label.align === 'right' ? label.x - label.width : label.x
     for (const dy of [-8, 0, 8, 17, 24]) places.push(...placesAlong({ x: left, y: label.y + dy }, { x: left + label.width, y: label.y + dy }, mark, near))
   }
-  for (const taken of [...marks, ...roots, ...roots.map(conjugate), ...meetings]) places.push(toScreen(viewport, taken))
+  for (const taken of [...marks, ...roots, ...meetings]) {
+    const { x, y } = toScreen(viewport, taken)
+    // A mark has some size: words beside it keep a little away.
+    for (const [dx, dy] of [[0, 0], [-8, 0], [8, 0], [0, -8], [0, 8]] as const) places.push({ x: x + dx, y: y + dy })
+  }
   for (const flag of flags) {
     const { x, y } = toScreen(viewport, flag.point)
     places.push(...placesAlong({ x, y }, { x, y: y - 40 }, mark, near))

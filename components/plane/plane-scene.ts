@@ -1,6 +1,5 @@
 import type { Complex } from '#shared/numerics/complex'
 import type { LoopAnalysis } from '#shared/control/types'
-import type { LocusHover } from '~/utils/plane/locus'
 import type { Region } from '~/utils/plane/regions'
 import type { ScreenPoint, Viewport } from '~/utils/plane/viewport'
 import type { PlaneColors } from '~/utils/plane/colors'
@@ -33,7 +32,8 @@ export interface HandScene {
   /** The figures wait for the server. */
   stale: boolean
   flags: { number: number, point: Complex }[]
-  hover: (LocusHover & { label: string }) | null
+  /** The place on the locus under the pointer, and its gain in words. */
+  hover: { point: Complex, label: string } | null
   turning: boolean
   /** Places that labels keep clear of, such as poles and zeros. */
   marks: Complex[]

@@ -2,11 +2,14 @@ import * as complex from '../numerics/complex'
 import type { Complex } from '../numerics/complex'
 import { evaluateAccurately } from '../numerics/compensated'
 import * as polynomial from '../numerics/polynomial'
-import { realRoots } from '../numerics/roots'
+import { roots } from '../numerics/roots'
 import { toDegrees, wrapAngle } from './angle'
 import { NoAnswerError } from './errors'
 import type { Gains, TransferFunction } from './types'
 import { valuesAt } from './values-at'
+
+/** Two zeros closer than this (relative) are one. */
+const coincidence = 1e-7
 
 /**
  * Every lead k (s + z)/(s + ratio z) with z > 0, k > 0 that puts a root at s; the larger zero-frequency gain k/ratio first.
@@ -31,13 +34,15 @@ export function placeLead(plant: TransferFunction, ratio: number, s: Complex): G
     .map(({ z, factor }) => ({ k: complex.abs(denominator) / complex.abs(numerator) / complex.abs(factor), zero: -z, pole: -ratio * z }))
     .filter(gains => Number.isFinite(gains.k) && gains.k > 0)
     .sort((a, b) => b.k - a.k)
-  const distinct = solutions.filter((gains, i) => i === 0 || gains.zero !== solutions[i - 1]!.zero)
+  const distinct = solutions.filter((gains, i) => i === 0 || Math.abs(gains.zero - solutions[i - 1]!.zero) > coincidence * Math.abs(gains.zero))
   if (distinct.length === 0) throw new NoAnswerError(whyNone(h, ratio, s), 'designPoint')
   return distinct
 }
 
+/** Where the ratio gives just the phase that is needed, both zeros fall together and rounding may part them into a complex pair. */
 function realRootsOrNone(quadratic: number[]): number[] {
-  return polynomial.isZero(quadratic) || !quadratic.every(Number.isFinite) ? [] : realRoots(quadratic)
+  if (polynomial.isZero(quadratic) || !quadratic.every(Number.isFinite)) return []
+  return roots(quadratic).filter(({ re, im }) => im >= 0 && im <= coincidence * Math.abs(re)).map(({ re }) => re)
 }
 
 function angleCondition(h: Complex, ratio: number, s: Complex): number[] {

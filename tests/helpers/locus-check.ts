@@ -23,7 +23,9 @@ export function residual({ openLoop: { numerator, denominator } }: LoopAnalysis,
   const d = evaluateComplex(denominator, s)
   const n = evaluateComplex(numerator, s)
   const size = Math.hypot(s.re, s.im)
-  return Math.hypot(d.re + gain * n.re, d.im + gain * n.im) / (evaluateSize(denominator, size) + gain * evaluateSize(numerator, size))
+  const terms = evaluateSize(denominator, size) + gain * evaluateSize(numerator, size)
+  // At a pole in the origin nothing is left of either.
+  return terms === 0 ? 0 : Math.hypot(d.re + gain * n.re, d.im + gain * n.im) / terms
 }
 
 /**

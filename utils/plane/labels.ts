@@ -13,9 +13,10 @@ export function formatNumber(value: number, digits = 3, size = Math.abs(value)):
   return (value < 0 && Number(text.replace('−', '-')) !== 0 ? '−' : '') + text
 }
 
-/** −1.32 + 1.76j */
+/** −1.32 + 1.76j; a real one without its imaginary part. */
 export function formatPoint(point: Complex): string {
   const size = abs(point)
+  if (point.im === 0) return formatNumber(point.re, 3, size)
   const sign = point.im < 0 ? '−' : '+'
   return `${formatNumber(point.re, 3, size)} ${sign} ${formatNumber(Math.abs(point.im), 3, size)}j`
 }
@@ -32,11 +33,11 @@ export interface Placement {
   index: number
   /** Upper left corner of the label. */
   at: ScreenPoint
-  align: 'left' | 'right'
+  align: 'left' | 'right' | 'center'
 }
 
 /** Left, right, above and below the mark, as (horizontal, vertical) sides. */
-const candidates: [number, number][] = [[-1, 0], [1, 0], [-1, -1], [1, -1], [-1, 1], [1, 1]]
+const candidates: [number, number][] = [[-1, 0], [1, 0], [-1, -1], [1, -1], [-1, 1], [1, 1], [0, -1], [0, 1]]
 
 /**
  * The place of a label beside its mark that covers the fewest of the given places and stays in the frame. The place chosen last is kept
@@ -47,12 +48,12 @@ export function placeLabel(
   frame: { width: number, height: number }, previous: number | null,
 ): Placement {
   const scored = candidates.map(([across, down], index) => {
-    const x = across < 0 ? mark.x - gap - size.width : mark.x + gap
-    const y = mark.y - size.height / 2 + down * (size.height / 2 + gap * 0.8)
+    const x = mark.x - size.width / 2 + across * (size.width / 2 + gap)
+    const y = mark.y - size.height / 2 + down * (size.height / 2 + gap * (across === 0 ? 1 : 0.8))
     const covered = taken.filter(({ x: tx, y: ty }) => tx > x - 4 && tx < x + size.width + 4 && ty > y - 4 && ty < y + size.height + 4).length
     const outside = Math.max(0, -x) + Math.max(0, x + size.width - frame.width) + Math.max(0, -y) + Math.max(0, y + size.height - frame.height)
     const cost = covered * 10 + outside * 20 + index - (index === previous ? 25 : 0)
-    return { index, at: { x, y }, align: across < 0 ? 'right' as const : 'left' as const, cost }
+    return { index, at: { x, y }, align: across < 0 ? 'right' as const : across > 0 ? 'left' as const : 'center' as const, cost }
   })
   const { index, at, align } = scored.reduce((best, candidate) => candidate.cost < best.cost ? candidate : best)
   return { index, at, align }

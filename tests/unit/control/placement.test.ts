@@ -127,4 +127,15 @@ describe('lead', () => {
     const found = roots(loopFunctions(plant, { form: 'lead', poleZeroRatio: 8 }, gains).characteristic)
     expect(found.filter(root => distance(root, { re: -2, im: 0 }) < 1e-7)).toHaveLength(2)
   })
+
+  it('finds the one zero of the least ratio, where two fall together', () => {
+    // Seen from -1.5 + j 1.5 sqrt 3 a lead of zero 9/(2 + sqrt 7) and pole 2 + sqrt 7 adds the most its ratio can, just what 10/(s(s+1)) lacks.
+    const pole = 2 + Math.sqrt(7)
+    for (const ulps of [-2, -1, 0, 1, 2]) {
+      const poleZeroRatio = pole * pole / 9 * (1 + ulps * 2 ** -52)
+      const { gains, alternatives } = placeGains(model([10], [1, 1, 0]), { form: 'lead', poleZeroRatio }, { re: -1.5, im: 1.5 * Math.sqrt(3) })
+      expect((gains as { zero: number }).zero).toBeCloseTo(-9 / pole, 6)
+      expect(alternatives).toEqual([])
+    }
+  })
 })

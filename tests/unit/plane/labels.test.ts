@@ -11,7 +11,7 @@ describe('label words', () => {
     expect(formatNumber(-0.0001, 3, 1)).toBe('0.00')
   })
 
-  it.each([[{ re: -1.32, im: 1.76 }, '−1.32 + 1.76j'], [{ re: 0, im: 12.5 }, '0.0 + 12.5j'], [{ re: 3, im: 0 }, '3.00 + 0.00j'], [{ re: -2e-6, im: 1e-6 }, '−2.00e−6 + 1.00e−6j'], [{ re: 1, im: -2 }, '1.00 − 2.00j']])('%j reads %s', (point, words) => {
+  it.each([[{ re: -1.32, im: 1.76 }, '−1.32 + 1.76j'], [{ re: 0, im: 12.5 }, '0.0 + 12.5j'], [{ re: -3, im: 0 }, '−3.00'], [{ re: -2e-6, im: 1e-6 }, '−2.00e−6 + 1.00e−6j'], [{ re: 1, im: -2 }, '1.00 − 2.00j']])('%j reads %s', (point, words) => {
     expect(formatPoint(point)).toBe(words)
   })
 

@@ -1,0 +1,93 @@
+import type { Page } from 'playwright-core'
+import { expect } from 'vitest'
+import { figure, shown, waitForFigure } from './browser'
+
+export interface Place { x: number, y: number }
+
+/** The bench as a hand and an eye use it. Figures come at full precision; `says` gives them as they are shown. */
+export class BenchPage {
+  constructor(readonly page: Page) {}
+
+  /** Opens a page with a bench and waits until it answers: alive, with a gain. */
+  async open(path: string): Promise<this> {
+    await this.page.goto(path)
+    await this.ready()
+    return this
+  }
+
+  async ready() {
+    await this.page.locator('[data-test="plane"][data-point-x]').waitFor()
+    await waitForFigure(this.page, 'gain', value => expect(Number.isFinite(value)).toBe(true))
+  }
+
+  gain = () => figure(this.page, 'gain')
+  reading = (name: string) => figure(this.page, name)
+  says = (name: string) => shown(this.page, name)
+  awaitFigure = (name: string, check: (value: number) => void) => waitForFigure(this.page, name, check)
+
+  /** Where the design point, the grip and the ticks stand on the screen. */
+  async places(): Promise<{ point: Place, grip: Place, ticks: Place[] }> {
+    const plane = this.plane()
+    const box = (await plane.boundingBox())!
+    const data = await plane.evaluate(element => ({ ...(element as HTMLElement).dataset }))
+    const onScreen = (x: number, y: number): Place => ({ x: box.x + x, y: box.y + y })
+    return {
+      point: onScreen(Number(data.pointX), Number(data.pointY)),
+      grip: onScreen(Number(data.gripX), Number(data.gripY)),
+      ticks: (JSON.parse(data.ticks ?? '[]') as Place[]).map(({ x, y }) => onScreen(x, y)),
+    }
+  }
+
+  plane() {
+    return this.page.locator('[data-test="plane"][data-point-x]')
+  }
+
+  /** Takes the design point by the mouse and moves it by so many pixels. */
+  async dragPointBy(dx: number, dy: number) {
+    const { point } = await this.places()
+    const { mouse } = this.page
+    await mouse.move(point.x, point.y)
+    await mouse.down()
+    for (let step = 1; step <= 8; step += 1) await mouse.move(point.x + dx * step / 8, point.y + dy * step / 8)
+    await mouse.up()
+  }
+
+  /** The same with one finger. */
+  async touchDragPointBy(dx: number, dy: number) {
+    const { point } = await this.places()
+    const session = await this.page.context().newCDPSession(this.page)
+    const touch = (type: 'touchStart' | 'touchMove' | 'touchEnd', touchPoints: Place[]) => session.send('Input.dispatchTouchEvent', { type, touchPoints })
+    await touch('touchStart', [point])
+    for (let step = 1; step <= 8; step += 1) await touch('touchMove', [{ x: point.x + dx * step / 8, y: point.y + dy * step / 8 }])
+    await touch('touchEnd', [])
+    await session.detach()
+  }
+
+  async press(...keys: string[]) {
+    await this.plane().focus()
+    for (const key of keys) await this.page.keyboard.press(key)
+  }
+
+  /** Types a figure into a field and leaves it by Enter. */
+  async type(field: string, value: number | string) {
+    const input = this.page.locator(`[data-test="${field}"]`)
+    await input.focus()
+    await input.fill(String(value))
+    await input.press('Enter')
+  }
+
+  async placePoint(dampingRatio: number, naturalFrequency: number) {
+    await this.type('zeta', dampingRatio)
+    await this.type('omega-n', naturalFrequency)
+  }
+
+  async clickTick(index: number) {
+    const { ticks } = await this.places()
+    const tick = ticks[index]
+    if (!tick) throw new Error(`There are ${ticks.length} meetings of ray and locus, none number ${index + 1}.`)
+    await this.page.mouse.click(tick.x, tick.y)
+  }
+
+  /** What the response strip draws, to tell whether it changed. */
+  responseCurve = () => this.page.locator('[data-test="response-curve"]').first().getAttribute('data-value')
+}

@@ -1,0 +1,56 @@
+import { mkdtempSync, rmSync } from 'node:fs'
+import { tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { pathToFileURL } from 'node:url'
+import { build } from 'esbuild'
+import { root } from '../prepare.mjs'
+import { loopOfOrder } from './loops.mjs'
+import { spread } from './table.mjs'
+
+const rounds = { warm: 60, timed: 400 }
+const requirements = [
+  { reading: 'overshootPercent', limit: 'at-most', value: 10 }, { reading: 'settlingTime', limit: 'at-most', value: 5 },
+  { reading: 'phaseMarginDeg', limit: 'at-least', value: 50 },
+]
+
+/** Median and spread of a solve (400 samples, all readings, three requirements) and of an analysis, by order of the plant. */
+export async function benchEngine() {
+  const engine = await loadEngine()
+  const rows = []
+  for (const order of [3, 6, 12, 20]) {
+    const loop = loopOfOrder(order)
+    const point = n => ({ re: -0.3 - (n % 40) / 200, im: 0.4 + (n % 40) / 150 })
+    rows.push({ what: `solve, order ${order}`, ...time(n => engine.solveDesign(loop, { form: 'gain' }, { designPoint: point(n) }, { requirements })) })
+  }
+  for (const order of [3, 6, 12, 20]) {
+    const loop = loopOfOrder(order)
+    rows.push({ what: `analyze, order ${order}`, ...time(n => engine.analyzeLoop(loop, { form: 'gain' }, { dampingRatio: 0.3 + (n % 40) / 100 })) })
+  }
+  return rows
+}
+
+function time(work) {
+  for (let n = 0; n < rounds.warm; n += 1) work(n)
+  const times = []
+  for (let n = 0; n < rounds.timed; n += 1) {
+    const started = performance.now()
+    work(n)
+    times.push(performance.now() - started)
+  }
+  return spread(times)
+}
+
+/** The engine is TypeScript; it is bundled once into a temporary file, as the server's build does. */
+async function loadEngine() {
+  const folder = mkdtempSync(join(tmpdir(), 'polewright-engine-'))
+  const outfile = join(folder, 'engine.mjs')
+  await build({
+    stdin: {
+      contents: `export { solveDesign } from './shared/control/solve'; export { analyzeLoop } from './shared/control/analyze'`, resolveDir: root,
+    },
+    bundle: true, format: 'esm', platform: 'node', target: 'node20', outfile, logLevel: 'warning',
+  })
+  const engine = await import(pathToFileURL(outfile).href)
+  rmSync(folder, { recursive: true, force: true })
+  return engine
+}

@@ -11,7 +11,7 @@ export default defineNuxtConfig({
   modules: ['@pinia/nuxt', '@nuxtjs/tailwindcss', 'nuxt-auth-utils'],
   components: [{ path: '~/components', pathPrefix: false }],
   imports: { dirs: ['stores', 'composables'] },
-  css: ['~/assets/theme.css'],
+  css: ['~/assets/theme.css', '~/assets/print.css'],
   devtools: { enabled: false },
   telemetry: false,
   tailwindcss: { cssPath: '~/assets/tailwind.css', viewer: false },
@@ -22,6 +22,7 @@ export default defineNuxtConfig({
     head: {
       htmlAttrs: { lang: 'en' },
       title: 'Polewright',
+      link: [{ rel: 'icon', type: 'image/svg+xml', href: '/favicon.svg' }],
       meta: [
         { name: 'viewport', content: 'width=device-width, initial-scale=1' },
         { name: 'description', content: 'The bench on which controls engineers of motion axes choose loop gains.' },

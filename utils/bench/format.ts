@@ -1,7 +1,8 @@
 import type { Complex } from '#shared/numerics/complex'
 
 const minus = '\u2212'
-const narrowSpace = '\u202F'
+/** Between figure and unit, and between thousands: never broken. */
+export const gap = '\u00A0'
 const superscripts: Record<string, string> = {
   '0': '⁰', '1': '¹', '2': '²', '3': '³', '4': '⁴', '5': '⁵', '6': '⁶', '7': '⁷', '8': '⁸', '9': '⁹', '-': '⁻',
 }
@@ -27,6 +28,12 @@ export function formatPlain(value: number, digits = 6): string {
   return String(Number(value.toPrecision(digits))).replace('-', minus)
 }
 
+/** A number with every digit that matters, thousands parted: for fields at rest. */
+export function formatExact(value: number): string {
+  const typed = toTyped(value)
+  return typed.includes('e') ? typed : `${value < 0 ? minus : ''}${grouped(typed.replace('-', ''))}`
+}
+
 /** A number for an input field: every digit that matters, and nothing that could not be typed back. */
 export function toTyped(value: number): string {
   return String(Number(value.toPrecision(12)))
@@ -47,7 +54,7 @@ export function formatPolynomial(coefficients: readonly number[]): string {
   return terms.map(({ coefficient, power }, index) => {
     const sign = coefficient < 0 ? (index === 0 ? minus : ` ${minus} `) : index === 0 ? '' : ' + '
     const size = Math.abs(coefficient)
-    const factor = size === 1 && power > 0 ? '' : formatPlain(size, 5) + (power > 0 ? narrowSpace : '')
+    const factor = size === 1 && power > 0 ? '' : formatPlain(size, 5) + (power > 0 ? gap : '')
     return sign + factor + (power === 0 ? '' : power === 1 ? 's' : `s${raise(power)}`)
   }).join('')
 }
@@ -63,12 +70,12 @@ function raise(power: number): string {
 
 function powerOfTen(size: number, digits: number): string {
   const [mantissa, exponent] = size.toExponential(digits - 1).split('e')
-  return `${mantissa}${narrowSpace}×${narrowSpace}10${raise(Number(exponent))}`
+  return `${mantissa}${gap}×${gap}10${raise(Number(exponent))}`
 }
 
 /** Thin gaps between thousands, from five digits on. */
 function grouped(text: string): string {
   const [whole, fraction] = text.split('.')
-  const parted = whole!.length > 4 ? whole!.replace(/\B(?=(\d{3})+$)/g, narrowSpace) : whole!
+  const parted = whole!.length > 4 ? whole!.replace(/\B(?=(\d{3})+$)/g, gap) : whole!
   return fraction === undefined ? parted : `${parted}.${fraction}`
 }

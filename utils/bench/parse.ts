@@ -10,7 +10,8 @@ const placeForm = new RegExp(`^(?:(?<onReal>[+-]?${size})|(?:(?<re>[+-]?${size})
 
 /** A number as people type it: a comma for the decimal point and a typographic minus are understood. */
 export function parseNumber(text: string): Parsed<number> {
-  const trimmed = text.trim()
+  // Gaps between thousands, as the fields themselves show them.
+  const trimmed = text.trim().replace(/(?<=\d)[\s\u00A0\u2009\u202F](?=\d{3}(?:\D|$))/g, '')
   if (trimmed === '') return { problem: 'a number is missing' }
   const plain = (/^[^.]*,[^.,]*$/.test(trimmed) ? trimmed.replace(',', '.') : trimmed).replace(minus, '-')
   return realForm.test(plain) ? finite(Number(plain), trimmed) : { problem: `“${trimmed}” is not a number` }

@@ -1,5 +1,5 @@
 import type { DesignSolution, ReadingName, Readings, Requirement } from '#shared/control/types'
-import { formatFigure, formatFixed, formatPlain } from './format'
+import { formatFigure, formatFixed, formatPlain, gap } from './format'
 
 export interface ReadingDescription {
   name: ReadingName
@@ -44,7 +44,7 @@ export function formatReading({ unit, decimals, digits }: ReadingDescription, va
 
 /** A limit in short: at most 12 % becomes ≤ 12 %. */
 export function formatLimit({ limit, value, reading }: Requirement): string {
-  return `${limit === 'at-most' ? '≤' : '≥'}\u202F${withUnit(formatPlain(value), describeReading(reading).unit)}`
+  return `${limit === 'at-most' ? '≤' : '≥'}${gap}${withUnit(formatPlain(value), describeReading(reading).unit)}`
 }
 
 /** A limit in words. */
@@ -54,7 +54,7 @@ export function sayLimit({ limit, value, reading }: Requirement): string {
 
 function withUnit(figure: string, unit: string): string {
   if (unit === '') return figure
-  return unit === '°' ? `${figure}°` : `${figure}\u202F${unit}`
+  return unit === '°' ? `${figure}°` : `${figure}${gap}${unit}`
 }
 
 /** The damping ratio is a reading only by its verdict: it is that of the least damped root. */

@@ -31,10 +31,11 @@ export function readColors(): PlaneColors {
 export function readDayColors(): PlaneColors {
   const { dataset } = document.documentElement
   const theme = dataset.theme
-  if (theme === undefined) return readColors()
-  delete dataset.theme
+  // Set rather than removed: without a theme the page follows the system.
+  dataset.theme = 'day'
   const colors = readColors()
-  dataset.theme = theme
+  if (theme === undefined) delete dataset.theme
+  else dataset.theme = theme
   return colors
 }
 

@@ -5,6 +5,7 @@ import { breakaways } from './locus/breakaways'
 import { cancelCommon, cancellationWidth, factor, invisibleWidth, type FactoredLoop } from './locus/factored-loop'
 import { traceBranches } from './locus/trace-branches'
 import { openLoop } from './controller'
+import { NoAnswerError } from './errors'
 import { relativeDegree, systemType } from './transfer-function'
 import type { Controller, Gains, LoopAnalysis, LoopModel } from './types'
 
@@ -18,7 +19,30 @@ import type { Controller, Gains, LoopAnalysis, LoopModel } from './types'
  * @param options.gains the present gains; needed for every form but `gain`, where they have no bearing
  * @throws NoAnswerError for a loop with more zeros than poles, without gains where they are needed, and with all gains zero
  */
-export function analyzeLoop(model: LoopModel, controller: Controller, options: { dampingRatio?: number, gains?: Gains } = {}): LoopAnalysis {
+export function analyzeLoop(model: LoopModel, controller: Controller, options: AnalysisOptions = {}): LoopAnalysis {
+  try {
+    const analysis = analyze(model, controller, options)
+    if (isFiniteThroughout(analysis)) return analysis
+  }
+  catch (error) {
+    // The root finder refuses coefficients that overflowed on the way.
+    if (!(error instanceof RangeError)) throw error
+  }
+  throw new NoAnswerError('the poles and zeros of this loop lie too far apart to draw one locus of them')
+}
+
+interface AnalysisOptions {
+  dampingRatio?: number
+  gains?: Gains
+}
+
+function isFiniteThroughout(value: unknown): boolean {
+  if (typeof value === 'number') return Number.isFinite(value)
+  if (typeof value !== 'object' || value === null) return true
+  return (Array.isArray(value) ? value : Object.values(value)).every(isFiniteThroughout)
+}
+
+function analyze(model: LoopModel, controller: Controller, options: AnalysisOptions): LoopAnalysis {
   const open = openLoop(model, controller, options.gains)
   const whole = factor(open)
   const { loop } = cancelCommon(whole, cancellationWidth)

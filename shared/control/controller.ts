@@ -26,19 +26,22 @@ interface ControllerPolynomials {
   denominator: number[]
 }
 
+/** Far beyond any machine, and its square is still a number. */
+const largest = 1e120
+
 const gainNames: Record<Controller['form'], readonly string[]> = {
   gain: ['k'], pd: ['kp', 'kd'], pi: ['kp', 'ki'], rate: ['kp', 'kr'], lead: ['k', 'zero', 'pole'],
 }
 
 /** The plant as the controller sees it: an inner rate feedback turns N/D into N/(D + kr s N). */
 export function effectivePlant({ plant, rateFeedback }: LoopModel): TransferFunction {
-  if (rateFeedback === 0) return { numerator: polynomial.trim(plant.numerator), denominator: polynomial.trim(plant.denominator) }
+  if (rateFeedback === 0) return inRange({ numerator: polynomial.trim(plant.numerator), denominator: polynomial.trim(plant.denominator) })
   const damping = polynomial.multiplyByPower(polynomial.scale(plant.numerator, rateFeedback), 1)
   const denominator = polynomial.add(plant.denominator, damping)
   if (polynomial.degree(denominator) < Math.max(polynomial.degree(plant.denominator), polynomial.degree(damping))) {
     throw new NoAnswerError('the inner rate feedback makes an algebraic loop: the highest power of s cancels', 'loop.rateFeedback')
   }
-  return { numerator: polynomial.trim(plant.numerator), denominator }
+  return inRange({ numerator: polynomial.trim(plant.numerator), denominator })
 }
 
 /**
@@ -51,6 +54,7 @@ export function loopFunctions(model: LoopModel, controller: Controller, gains: G
   const { feedforward, feedback, denominator } = controllerPolynomials(controller, gains)
   const loop = { numerator: polynomial.multiply(feedback, plant.numerator), denominator: polynomial.multiply(denominator, plant.denominator) }
   refuseImproper(loop)
+  inRange(loop)
   const characteristic = polynomial.add(loop.denominator, loop.numerator)
   if (polynomial.degree(characteristic) < polynomial.degree(loop.denominator)) {
     throw new NoAnswerError('the loop is algebraic: 1 + L(s) vanishes as s grows, so no output is defined at these gains')
@@ -81,7 +85,7 @@ export function openLoop(model: LoopModel, controller: Controller, gains?: Gains
   const loop = series({ numerator: feedback, denominator }, effectivePlant(model))
   if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to analyse', 'gains')
   refuseImproper(loop)
-  return loop
+  return inRange(loop)
 }
 
 /** The K of L = K L0: k where the form has one, else 1 (the present gains are inside L0). */
@@ -126,4 +130,16 @@ function refuseImproper(loop: TransferFunction): void {
   if (!polynomial.isZero(loop.numerator) && relativeDegree(loop) < 0) {
     throw new NoAnswerError('the loop has more zeros than poles: the controller differentiates more than the plant smooths')
   }
+}
+
+/**
+ * The same transfer function, its coefficients checked to lie in a range in which products of them neither overflow nor vanish.
+ * @throws NoAnswerError else
+ */
+export function inRange(g: TransferFunction): TransferFunction {
+  const outside = (coefficient: number) => coefficient !== 0 && !(Math.abs(coefficient) >= 1 / largest && Math.abs(coefficient) <= largest)
+  if (g.numerator.some(outside) || g.denominator.some(outside)) {
+    throw new NoAnswerError('the numbers of this loop are too large or too small to compute with: choose units nearer to its size')
+  }
+  return g
 }

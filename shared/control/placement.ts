@@ -33,6 +33,15 @@ export const onLocusTolerance = 1e-6 * Math.PI / 180
  * @throws NoAnswerError where no gain reaches the point: a zero of the plant, the pole of the controller, no admissible lead
  */
 export function placeGains(model: LoopModel, controller: Controller, designPoint: Complex): Placement {
+  const placement = place(model, controller, designPoint)
+  const figures = [placement.leftoverAngle, ...[placement.gains, ...placement.alternatives].flatMap(gains => Object.values(gains) as number[])]
+  if (!figures.every(Number.isFinite)) {
+    throw new NoAnswerError('the gains of this design point are too large or too small to compute with', 'designPoint')
+  }
+  return placement
+}
+
+function place(model: LoopModel, controller: Controller, designPoint: Complex): Placement {
   switch (controller.form) {
     case 'gain': return placeOneGain(openLoop(model, controller), designPoint)
     case 'lead': return reached(placeLead(effectivePlant(model), controller.poleZeroRatio, designPoint))

@@ -114,11 +114,12 @@ const noBranch: Branch = { points: [] }
  * came in goes on as a pair where it can.
  */
 function assign({ place, branches, mirrors }: Station, movers: Mover[]): Mover[] {
-  if (place.im > 0) return movers.map((mover, i) => ({ ...mover, branch: branches[i]!, mirror: mirrors[i]! }))
   const free = [...branches]
+  const mirrored = [...mirrors]
+  // A root without a branch (which only numbers beyond all accuracy bring about) is carried on unseen.
+  const next = (from: Branch[]) => from.shift() ?? { points: [] }
+  if (place.im > 0) return movers.map(mover => ({ ...mover, branch: next(free), mirror: next(mirrored) }))
   return [...movers]
     .sort((a, b) => Number(a.mirror === null) - Number(b.mirror === null) || a.re - b.re)
-    .map(mover => mover.mirror === null
-      ? { ...mover, branch: free.shift()! }
-      : { ...mover, branch: free.shift()!, mirror: free.shift()! })
+    .map(mover => ({ ...mover, branch: next(free), mirror: mover.mirror === null ? null : next(free) }))
 }

@@ -1,4 +1,4 @@
-import { refine, type MovingRoot, type ScaledLoop } from './scaled-loop'
+import { refine, smallest, type MovingRoot, type ScaledLoop } from './scaled-loop'
 
 /** Points of one branch in scaled units, by rising gain. */
 export interface Branch {
@@ -19,12 +19,12 @@ const sidewaysLimit = 0.06
 const lengthwiseLimit = 0.5
 /** A corrected root must lie within this share of the distance to its neighbours from where it was expected, so that none swap. */
 const separationShare = 0.25
-/** Pieces below this length are points on any screen: their curvature is of no account. */
+/** Pieces below this share of their distance from the origin are points on any screen: their curvature is of no account. */
 const invisible = 1e-6
 const longestStep = 1
 const shortestStep = 1e-15
 /** An interval that needs more is finished in one piece: what is left of it lies below the accuracy of the poles and zeros. */
-const mostSteps = 2000
+const mostSteps = 1200
 
 /** Writes the movers' present places into their branches. */
 export function record(movers: Mover[], k: number): void {
@@ -83,7 +83,8 @@ function advance(loop: ScaledLoop, movers: Mover[], k: number, du: number): { ar
     const length = Math.hypot(root.re - mover.re, root.im - mover.im)
     deviations.push(off)
     strain = Math.max(strain, length / (longestPiece * Math.max(1, Math.hypot(root.re, root.im))))
-    if (length > invisible || off > invisible) {
+    const least = invisible * (smallest + Math.hypot(root.re, root.im))
+    if (length > least || off > least) {
       const speed = Math.hypot(mover.velocityRe, mover.velocityIm)
       const sideways = speed > 0 ? Math.abs(offRe * mover.velocityIm - offIm * mover.velocityRe) / speed : off
       strain = Math.max(strain, sideways / (sidewaysLimit * length), off / (lengthwiseLimit * length))
@@ -99,7 +100,7 @@ function crowding(movers: Mover[], deviations: number[]): number {
   for (let i = 0; i < movers.length; i++) {
     const a = movers[i]!
     const deviation = deviations[i]!
-    if (deviation < 1e-12) continue
+    if (deviation === 0) continue
     let nearest = a.mirror === null ? Infinity : 2 * a.im
     for (let j = 0; j < movers.length; j++) {
       if (j === i) continue

@@ -37,6 +37,8 @@ export interface MovingRoot {
 const newtonSteps = 8
 /** Newton converges quadratically: a step this small leaves an error far below it. */
 const settled = 1e-8
+/** Nearer to the origin than this (extents) a distance counts as absolute: it is no part of the figure any more. */
+export const smallest = 1e-9
 
 /** The root near a starting point at gain k, by Newton; null where it does not settle. `real` holds it on the real axis. */
 export function refine(loop: ScaledLoop, k: number, startRe: number, startIm: number, real: boolean): MovingRoot | null {
@@ -57,7 +59,7 @@ export function refine(loop: ScaledLoop, k: number, startRe: number, startIm: nu
     im -= stepIm
     const step = Math.abs(stepRe) + Math.abs(stepIm)
     if (!Number.isFinite(step)) return null
-    if (step <= settled * (1e-3 + Math.abs(re) + Math.abs(im))) {
+    if (step <= settled * (smallest + Math.abs(re) + Math.abs(im))) {
       return {
         re,
         im,

@@ -4,8 +4,10 @@ interface Point {
   k: number
 }
 
-/** Points nearer than this to the last kept one (extents; of the distance from the origin further out) go, unless the branch turns. */
+/** Points nearer than this to the last kept one (extents; of the distance from the origin further out) go, unless the branch turns... */
 const spacing = 0.02
+/** ...or this share of the distance from the origin, where that is less: slow roots beside fast ones keep their points too. */
+const spacingNearOrigin = 0.15
 /** Turn (radians) since the last kept piece that keeps a point. */
 const turn = 0.1
 
@@ -24,7 +26,8 @@ export function thin(points: Point[], outside: number): Point[] {
     const gap = Math.hypot(here.re - last.re, here.im - last.im)
     const next = cut[i + 1]!
     const onward = Math.hypot(next.re - here.re, next.im - here.im)
-    if (gap + onward >= spacing * Math.max(1, Math.hypot(here.re, here.im)) || bends(last, here, next)) kept.push(here)
+    const size = Math.hypot(here.re, here.im)
+    if (gap + onward >= Math.min(spacing * Math.max(1, size), spacingNearOrigin * size) || bends(last, here, next)) kept.push(here)
   }
   kept.push(cut[cut.length - 1]!)
   return kept

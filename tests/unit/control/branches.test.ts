@@ -120,7 +120,7 @@ describe('branches', () => {
 
   it('put the exact breakaway gain into the branches that meet', () => {
     const analysis = analyze({ numerator: [1], denominator: [1, 3, 2, 0] })
-    const [{ point, gain }] = analysis.breakaways as [{ point: { re: number }, gain: number }]
+    const { point, gain } = analysis.breakaways[0]!
     const through = analysis.branches.filter(({ points }) => points.some(([re, im, k]) => im === 0 && Math.abs(re - point.re) < 1e-12 && Math.abs(k / gain - 1) < 1e-12))
     expect(through).toHaveLength(2)
   })

@@ -9,7 +9,7 @@ export default defineNuxtConfig({
   // Everything lives at the top level: a folder named app/ would become the source folder of Nuxt 4.
   srcDir: '.',
   modules: ['@pinia/nuxt', '@nuxtjs/tailwindcss', 'nuxt-auth-utils'],
-  components: [{ path: '~/components', pathPrefix: false }],
+  components: [{ path: '~/components', pathPrefix: false, extensions: ['vue'] }],
   imports: { dirs: ['stores', 'composables'] },
   css: ['~/assets/theme.css', '~/assets/print.css'],
   devtools: { enabled: false },

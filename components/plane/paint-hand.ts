@@ -1,4 +1,5 @@
 import type { Context } from 'konva/lib/Context'
+import { flagSize } from '~/utils/plane/flags'
 import { nearest } from '~/utils/plane/marks'
 import { rayAngle, visibleRay } from '~/utils/plane/ray'
 import { isInView, toScreen, type ScreenPoint } from '~/utils/plane/viewport'
@@ -123,17 +124,15 @@ function paintPoint(context: Context, { viewport, colors, point, onLocus }: Hand
   context.fill()
 }
 
-export const flagSize = { width: 22, height: 18, pole: 22 }
-
 /** Numbered flags of the comments pinned to the plane. */
-function paintFlags(context: Context, { viewport, colors, flags }: HandScene): void {
-  for (const flag of flags) {
-    const { x, y } = toScreen(viewport, flag.point)
-    strokeLines(context, [[{ x, y }, { x, y: y - flagSize.pole - flagSize.height }]], paint(colors.ink), 1.4)
+function paintFlags(context: Context, { colors, flags }: HandScene): void {
+  for (const { flag, foot, cloth } of flags) {
+    strokeLines(context, [[foot, cloth]], paint(colors.ink), 1.4)
     context.fillStyle = paint(colors.ink)
-    context.fillRect(x, y - flagSize.pole - flagSize.height, flagSize.width, flagSize.height)
+    context.fillRect(cloth.x, cloth.y, flagSize.width, flagSize.height)
     context.font = font(12, 700)
-    writeText(context, String(flag.number), { x: x + flagSize.width / 2, y: y - flagSize.pole - flagSize.height / 2 + 0.5 }, { color: paint(colors.paper), align: 'center' })
+    const middle = { x: cloth.x + flagSize.width / 2, y: cloth.y + flagSize.height / 2 + 0.5 }
+    writeText(context, String(flag.number), middle, { color: paint(colors.paper), align: 'center' })
   }
 }
 

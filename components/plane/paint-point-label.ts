@@ -54,9 +54,9 @@ function takenPlaces(context: Context, scene: HandScene, mark: ScreenPoint): Scr
     // A mark has some size: words beside it keep a little away.
     for (const [dx, dy] of [[0, 0], [-8, 0], [8, 0], [0, -8], [0, 8]] as const) places.push({ x: x + dx, y: y + dy })
   }
-  for (const flag of flags) {
-    const { x, y } = toScreen(viewport, flag.point)
-    places.push(...placesAlong({ x, y }, { x, y: y - 40 }, mark, near))
+  for (const { foot, cloth } of flags) {
+    places.push(...placesAlong(foot, cloth, mark, near))
+    for (const dx of [8, 16, 24]) places.push(...placesAlong({ x: cloth.x + dx, y: cloth.y + 20 }, { x: cloth.x + dx, y: cloth.y }, mark, near))
   }
   const axis = toScreen(viewport, { re: 0, im: 0 })
   places.push(...placesAlong({ x: 0, y: axis.y }, { x: viewport.width, y: axis.y }, mark, near))

@@ -1,5 +1,6 @@
 import type { Complex } from '#shared/numerics/complex'
 import type { LoopAnalysis } from '#shared/control/types'
+import type { FlagPlace } from '~/utils/plane/flags'
 import type { Region } from '~/utils/plane/regions'
 import type { ScreenPoint, Viewport } from '~/utils/plane/viewport'
 import type { PlaneColors } from '~/utils/plane/colors'
@@ -31,7 +32,7 @@ export interface HandScene {
   leftoverDeg: number | null
   /** The figures wait for the server. */
   stale: boolean
-  flags: { number: number, point: Complex }[]
+  flags: FlagPlace<{ number: number }>[]
   /** The place on the locus under the pointer, and its gain in words. */
   hover: { point: Complex, label: string } | null
   turning: boolean

@@ -1,0 +1,23 @@
+import { describe, expect, it } from 'vitest'
+import { placeFlags } from '~/utils/plane/flags'
+import type { Viewport } from '~/utils/plane/viewport'
+
+const viewport: Viewport = { center: { re: 0, im: 0 }, scale: 100, width: 600, height: 400 }
+
+describe('flags', () => {
+  it('stand on their place', () => {
+    const flag = { id: 'a', point: { re: -1, im: 1 } }
+    expect(placeFlags([flag], viewport)).toEqual([{ flag, foot: { x: 200, y: 100 }, cloth: { x: 200, y: 60 } }])
+  })
+
+  it('never cover one another', () => {
+    const flags = [[-1, 1], [-1, 1], [-1.1, 1], [-1, 1.1], [2, 0]].map(([re = 0, im = 0]) => ({ point: { re, im } }))
+    const placed = placeFlags(flags, viewport)
+    expect(placed.map(({ cloth }) => cloth.y)).toEqual([60, 37, 14, expect.closeTo(-19, 9), 160])
+    placed.forEach((a, index) => {
+      for (const b of placed.slice(index + 1)) {
+        expect(Math.abs(a.cloth.x - b.cloth.x) >= 24 || Math.abs(a.cloth.y - b.cloth.y) >= 20).toBe(true)
+      }
+    })
+  })
+})

@@ -3,6 +3,7 @@ import { analyzeLoop } from '#shared/control/analyze'
 import { NoAnswerError } from '#shared/control/errors'
 import type { LoopAnalysis } from '#shared/control/types'
 import { fromRoots } from '#shared/numerics/polynomial'
+import { seededRandom } from '../../helpers/random'
 
 const real = (...places: number[]) => places.map(re => ({ re, im: 0 }))
 
@@ -168,5 +169,34 @@ describe('analyzeLoop, forms', () => {
 
   it('refuses more zeros than poles', () => {
     expect(() => analyze([1, 2, 3], [1, 1])).toThrow(/more zeros than poles/)
+  })
+})
+
+describe('analyzeLoop, numbers beyond range', () => {
+  it('answers in one sentence instead of with infinities', () => {
+    expect(() => analyze([1], [1e200, 1, 0])).toThrow(/choose units nearer/)
+    expect(() => analyze([1e-200], [1, 1])).toThrow(NoAnswerError)
+  })
+
+  it('draws whatever it accepts with finite numbers, or refuses it', () => {
+    const random = seededRandom(4)
+    for (let round = 0; round < 60; round++) {
+      const coefficient = () => (random() - 0.5) * 10 ** (60 * random() - 30)
+      const order = 1 + Math.floor(4 * random())
+      try {
+        const analysis = analyze([coefficient()], Array.from({ length: order + 1 }, coefficient), 0.5)
+        expect(analysis.branches.flatMap(({ points }) => points.flat()).every(Number.isFinite)).toBe(true)
+      }
+      catch (error) {
+        expect(error).toBeInstanceOf(NoAnswerError)
+      }
+    }
+  })
+
+  it('traces slow poles a billion times nearer to the origin than fast ones', () => {
+    const { branches, breakaways } = analyze([1], fromRoots(real(0, -1e-3, -1e6)))
+    expect(breakaways[0]!.point.re).toBeCloseTo(-5e-4, 10)
+    const through = branches.filter(({ points }) => points.some(([re, im]) => im === 0 && Math.abs(re - breakaways[0]!.point.re) < 1e-12))
+    expect(through).toHaveLength(2)
   })
 })

@@ -36,8 +36,10 @@ export interface Placement {
   align: 'left' | 'right' | 'center'
 }
 
-/** Left, right, above and below the mark, as (horizontal, vertical) sides. */
-const candidates: [number, number][] = [[-1, 0], [1, 0], [-1, -1], [1, -1], [-1, 1], [1, 1], [0, -1], [0, 1]]
+/** Left, right, above and below the mark, as horizontal and vertical sides, and how much further away than the gap. */
+const candidates: [number, number, number][] = [
+  [-1, 0, 0], [1, 0, 0], [-1, -1, 0], [1, -1, 0], [-1, 1, 0], [1, 1, 0], [0, -1, 0], [0, 1, 0], [-1, 0, 28], [1, 0, 28],
+]
 
 /**
  * The place of a label beside its mark that covers the fewest of the given places and stays in the frame. The place chosen last is kept
@@ -47,8 +49,8 @@ export function placeLabel(
   mark: ScreenPoint, size: { width: number, height: number }, gap: number, taken: readonly ScreenPoint[],
   frame: { width: number, height: number }, previous: number | null,
 ): Placement {
-  const scored = candidates.map(([across, down], index) => {
-    const x = mark.x - size.width / 2 + across * (size.width / 2 + gap)
+  const scored = candidates.map(([across, down, further], index) => {
+    const x = mark.x - size.width / 2 + across * (size.width / 2 + gap + further)
     const y = mark.y - size.height / 2 + down * (size.height / 2 + gap * (across === 0 ? 1 : 0.8))
     const covered = taken.filter(({ x: tx, y: ty }) => tx > x - 4 && tx < x + size.width + 4 && ty > y - 4 && ty < y + size.height + 4).length
     const outside = Math.max(0, -x) + Math.max(0, x + size.width - frame.width) + Math.max(0, -y) + Math.max(0, y + size.height - frame.height)

@@ -31,6 +31,11 @@ describe('label places', () => {
     expect(placeLabel({ x: 300, y: 5 }, size, 20, [], frame, null).at.y).toBeGreaterThan(0)
   })
 
+  it('goes further away where a neighbour stands close on every side', () => {
+    const around = [[-30, 0], [30, 0], [-30, -30], [30, -30], [-30, 30], [30, 30], [0, -30], [0, 30]].map(([dx = 0, dy = 0]) => ({ x: 300 + dx, y: 200 + dy }))
+    expect(placeLabel({ x: 300, y: 200 }, size, 20, around, frame, null)).toEqual({ index: 8, at: { x: 152, y: 185 }, align: 'right' })
+  })
+
   it('stays where it was until another place is clearly better', () => {
     const taken = [{ x: 200, y: 200 }]
     expect(placeLabel({ x: 300, y: 200 }, size, 20, taken, frame, 0).index).toBe(0)

@@ -23,15 +23,15 @@ export interface ReadingOptions {
 export function readAll(functions: LoopFunctions, poles: readonly Complex[], stable: boolean, step: LoopResponse, options: ReadingOptions): Readings {
   const ofLoop = { ...margins(functions.loop, stable), sensitivityPeak: sensitivityPeak(functions.loop, poles) }
   if (!stable) {
-    return {
+    return finiteOrNull({
       finalValue: null, overshootPercent: null, peakTime: null, riseTime: null, settlingTime: null,
       steadyStateErrorStep: null, steadyStateErrorRamp: null, peakEffort: null, ...ofLoop, bandwidth: null,
-    }
+    })
   }
   const { amplitude, settlingBandPercent } = options
   const scaled = (value: number | null) => value === null ? null : value * amplitude + 0
   const figures = stepFigures(step.output, settlingBandPercent)
-  return {
+  return finiteOrNull({
     ...figures,
     finalValue: scaled(figures.finalValue),
     steadyStateErrorStep: scaled(stationaryError(functions.error, 1)),
@@ -39,5 +39,13 @@ export function readAll(functions: LoopFunctions, poles: readonly Complex[], sta
     peakEffort: step.effort.impulsive ? null : largestSize(step.effort) * Math.abs(amplitude),
     ...ofLoop,
     bandwidth: bandwidth(functions.reference),
+  })
+}
+
+/** A figure that has left the range of numbers does not exist either. */
+function finiteOrNull(readings: Readings): Readings {
+  for (const name of Object.keys(readings) as (keyof Readings)[]) {
+    if (name !== 'gainMargin' && !Number.isFinite(readings[name])) readings[name] = null
   }
+  return readings
 }

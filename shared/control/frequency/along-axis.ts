@@ -48,7 +48,7 @@ export function inUnitFrequency({ numerator, denominator }: TransferFunction): {
   const exponent = span === 0 ? 0 : Math.round(Math.log2(Math.abs(stripped[span]! / stripped[0]!)) / span)
   const highest = denominator.length - 1
   const logarithm = (p: number[]) => p.reduce((most, c, i) => c === 0 ? most : Math.max(most, Math.log2(Math.abs(c)) + (p.length - 1 - i) * exponent), -Infinity)
-  const shift = Math.ceil(logarithm(denominator))
+  const shift = Math.ceil(Math.max(logarithm(denominator), logarithm(numerator)))
   const scale = (p: number[]) => p.map((c, i) => timesPowerOfTwo(c, (p.length - 1 - i) * exponent - shift))
   return highest < 0 ? { scaled: { numerator, denominator }, unit: 1 } : { scaled: { numerator: scale(numerator), denominator: scale(denominator) }, unit: 2 ** exponent }
 }

@@ -2,7 +2,7 @@ import type { Complex } from '../../numerics/complex'
 import { applyMatrix, matrixExponential } from '../../numerics/matrix-exponential'
 import { leading, rootsAtOrigin, type Polynomial } from '../../numerics/polynomial'
 import { isImpulsive, polesAtOrigin, remainingPolynomial, type Transform } from './modal-sum'
-import { polynomialAt, type Instant, type Trajectory } from './trajectory'
+import { diesOut, instantsPerLength, polynomialAt, type Instant, type Trajectory } from './trajectory'
 
 /**
  * The inverse transform by the exponential of a matrix: the poles as a chain of first- and second-order sections, driven by an impulse. Repeated
@@ -22,14 +22,12 @@ interface Realisation {
 
 /** Turn of the fastest living pole during one step of the table, radians. */
 const stepAngle = 0.4
-/** A walk over the table has at most this many steps at one step length; a lightly damped signal beyond it is walked in longer steps. */
-const stepsPerLength = 4000
 const frozen = 1e250
 
 export function cascade(transform: Transform): Trajectory {
   const system = realise(transform)
   const remains = remainingPolynomial(transform)
-  const decays = transform.poles.every(pole => pole.re < 0 || (pole.re === 0 && pole.im === 0))
+  const decays = transform.poles.every(pole => diesOut(pole) || (pole.re === 0 && pole.im === 0))
   const steady = (t: number) => polynomialAt(remains, t)
     const outputSlope = applyTransposed(system.matrix, system.output)
   const remainsSlope = remains.slice(1).map((coefficient, i) => (i + 1) * coefficient)
@@ -79,7 +77,7 @@ class Table {
     this.states = [system.start]
     let exponent = NaN
     let propagator: Float64Array | null = null
-    let stepsLeft = stepsPerLength
+    let stepsLeft = instantsPerLength
     for (let t = 0; t < this.end;) {
       const fastest = Math.max(...moving.filter(pole => t < life(pole)).map(pole => Math.hypot(pole.re, pole.im)))
       let wanted = Math.floor(Math.log2(stepAngle / fastest))
@@ -87,7 +85,7 @@ class Table {
       if (!(wanted <= exponent)) {
         exponent = wanted
         propagator = scaledExponential(system.matrix, 2 ** exponent)
-        stepsLeft = stepsPerLength
+        stepsLeft = instantsPerLength
       }
       t += 2 ** exponent
       stepsLeft--

@@ -9,6 +9,9 @@ const longestTail = 6
 const mostCycles = 25
 /** An unstable response is shown while it grows e^5 = 150-fold. */
 const growthTimes = 5
+/** Seconds; beyond these the numbers themselves give out. */
+const shortest = 1e-200
+const longest = 1e200
 const niceSteps = [1, 1.2, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10]
 
 /**
@@ -54,6 +57,7 @@ function largestTransient(y: Trajectory): number {
 
 /** The next of a few round numbers. */
 function roundUp(duration: number): number {
+  if (!(duration > shortest && duration < longest)) return duration > 1 ? longest : shortest
   const decade = 10 ** Math.floor(Math.log10(duration))
   const step = niceSteps.find(candidate => candidate * decade >= duration * (1 - 1e-9))!
   // Through text, so that 3 * 0.1 comes out as 0.3.

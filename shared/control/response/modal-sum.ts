@@ -1,7 +1,7 @@
 import type { Complex } from '../../numerics/complex'
 import { evaluateComplexCompensated } from '../../numerics/compensated'
 import { degree, derivative, evaluateComplex, leading, rootsAtOrigin, type Polynomial } from '../../numerics/polynomial'
-import { polynomialAt, type Instant, type Trajectory } from './trajectory'
+import { diesOut, instantsPerLength, polynomialAt, type Instant, type Trajectory } from './trajectory'
 
 /** A Laplace transform N(s) / (D(s) s^integrators) of which the roots of D are known. */
 export interface Transform {
@@ -152,7 +152,7 @@ function sumAt({ sigma, omega, re, im }: Modes, t: number): number {
 
 function trajectoryOf(modes: Modes, remains: number[], impulsive: boolean, reference: number): Trajectory {
   const { sigma, omega, re, im } = modes
-  const decays = sigma.every(rate => rate < 0)
+  const decays = sigma.every((re, i) => diesOut({ re, im: omega[i]! }))
   const speeds: Modes = {
     sigma, omega, re: sigma.map((rate, i) => re[i]! * rate - im[i]! * omega[i]!), im: sigma.map((rate, i) => re[i]! * omega[i]! + im[i]! * rate),
   }
@@ -212,7 +212,7 @@ class ModalWalk {
   private advance(): void {
     const { sigma, omega } = this.modes
     const from = this.instants[this.instants.length - 1]!.time
-    const step = this.step(from)
+    const step = this.step(from) * 2 ** Math.floor(this.instants.length / instantsPerLength)
     if (step !== this.lastStep) {
       for (let i = 0; i < sigma.length; i++) {
         const size = Math.exp(sigma[i]! * step)

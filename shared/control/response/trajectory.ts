@@ -1,4 +1,19 @@
+import type { Complex } from '../../numerics/complex'
 import { findRoot } from '../../numerics/find-root'
+
+/** A root this close to the imaginary axis, against its size, lies on it as far as rounding lets it be told. */
+const onAxis = 1e-13
+
+/** Whether a mode e^(pt) dies out. */
+export function diesOut(pole: Complex): boolean {
+  return pole.re < -onAxis * Math.hypot(pole.re, pole.im)
+}
+
+/**
+ * Instants of a walk at one step length. A signal that needs more (a resonance all but undamped beside something slow) is walked in longer and
+ * longer steps after that, so that no loop, however strange, takes long; its figures are then good to the envelope of that resonance.
+ */
+export const instantsPerLength = 2000
 
 /** One instant of a walk along a transient. */
 export interface Instant {
@@ -105,8 +120,8 @@ export function lastOutside(y: Trajectory, band: number): number {
   let valueB = y.transient(b)
   let slopeB = y.slope(b)
   const excess = (t: number) => Math.abs(y.transient(t)) - band
-  while (b > 0) {
-    const a = y.previous(b)
+  for (let k = 0; b > 0; k++) {
+    const a = Math.max(0, b - (b - y.previous(b)) * 2 ** Math.floor(k / instantsPerLength))
     const valueA = y.transient(a)
     const slopeA = y.slope(a)
     if (slopeA * slopeB < 0 && Math.max(Math.abs(valueA + slopeA * (b - a)), Math.abs(valueB - slopeB * (b - a))) > band) {
@@ -131,7 +146,7 @@ function envelopeReaches(y: Trajectory, band: number): number {
   let low = 0
   const step = y.instant(1)!.time
   let high = step
-  while (y.envelope(high) > band) {
+  while (y.envelope(high) > band && high < Number.MAX_VALUE / 2) {
     low = high
     high *= 2
   }

@@ -32,7 +32,7 @@ export function paintPointLabel(context: Context, scene: HandScene): void {
 }
 
 function standing({ onLocus, leftoverDeg, stale }: HandScene): string {
-  if (stale) return 'waiting for the server'
+  if (stale) return 'no answer yet'
   if (onLocus) return 'on the locus'
   return leftoverDeg === null ? 'off the locus' : `${formatAngle(leftoverDeg)} left over`
 }

@@ -81,13 +81,56 @@ export class BenchPage {
     await this.type('omega-n', naturalFrequency)
   }
 
+  /** Clicks a tick of the ray, after zooming out as far as it takes to see it clear of the grip. */
   async clickTick(index: number) {
-    const { ticks } = await this.places()
-    const tick = ticks[index]
-    if (!tick) throw new Error(`There are ${ticks.length} meetings of ray and locus, none number ${index + 1}.`)
-    await this.page.mouse.click(tick.x, tick.y)
+    const box = (await this.plane().boundingBox())!
+    const margin = 30
+    await this.press('f')
+    for (let zooms = 0; zooms < 20; zooms += 1) {
+      const { ticks, grip } = await this.places()
+      const tick = ticks[index]
+      if (!tick) throw new Error(`There are ${ticks.length} meetings of ray and locus, none number ${index + 1}.`)
+      const clearOfGrip = Math.hypot(tick.x - grip.x, tick.y - grip.y) > margin
+      if (clearOfGrip && tick.x > box.x + margin && tick.y > box.y + margin) return this.page.mouse.click(tick.x, tick.y)
+      await this.press('-')
+    }
+    throw new Error('The tick stays out of sight.')
   }
 
-  /** What the response strip draws, to tell whether it changed. */
-  responseCurve = () => this.page.locator('[data-test="response-curve"]').first().getAttribute('data-value')
+  /** Types a gain in place of the large figure. */
+  async typeGain(value: number) {
+    await this.page.locator('[data-test="gain"]').click()
+    const input = this.page.locator('[data-test="gain-input"]')
+    await input.fill(String(value))
+    await input.press('Enter')
+  }
+
+  /** The response as it is drawn, to tell whether it changed. */
+  responseCurve = () => this.page.locator('[data-test="response-curve"]').getAttribute('d')
+
+  async choosePlant(form: 'expression' | 'coefficients' | 'zeros-poles-gain') {
+    await this.page.locator(`[data-test="plant-form-${form}"]`).check({ force: true })
+  }
+
+  async typePlaces(plant: { zeros: string, poles: string, gain: number }) {
+    await this.choosePlant('zeros-poles-gain')
+    await this.type('zeros', plant.zeros)
+    await this.type('poles', plant.poles)
+    await this.type('plant-gain', plant.gain)
+  }
+
+  async typeCoefficients(plant: { numerator: string, denominator: string }) {
+    await this.choosePlant('coefficients')
+    await this.type('numerator', plant.numerator)
+    await this.type('denominator', plant.denominator)
+  }
+
+  async typeFormula(formula: string) {
+    await this.choosePlant('expression')
+    await this.type('formula', formula)
+  }
+
+  async chooseController(form: 'gain' | 'pd' | 'pi' | 'rate' | 'lead') {
+    await this.page.locator('[data-test="controller-form"]').selectOption(form)
+  }
 }

@@ -33,7 +33,8 @@ export async function visitor(browser: Browser, origin: string, options: Browser
 
   page.on('console', (message) => {
     if (!['error', 'warning'].includes(message.type())) return
-    const status = Number(/status of (\d+)/.exec(message.text())?.[1])
+    // A request without any answer counts as status 0.
+    const status = message.text().includes('net::') ? 0 : Number(/status of (\d+)/.exec(message.text())?.[1])
     if (!isAllowed(status, message.location().url)) found.push(`console ${message.type()}: ${message.text()} (${message.location().url})`)
   })
   page.on('pageerror', error => found.push(`exception: ${error.message}`))

@@ -12,7 +12,7 @@ export function formatFigure(value: number, digits = 4): string {
   if (value === 0) return '0'
   if (!Number.isFinite(value)) return '–'
   const size = Math.abs(value)
-  const text = size >= 10 ** Math.max(digits, 5) || size < 1e-4 ? powerOfTen(size, digits) : grouped(size.toPrecision(digits))
+  const text = size >= 10 ** Math.max(digits, 5) || size < 1e-4 ? powerOfTen(size, digits) : grouped(significant(size, digits))
   return value < 0 ? minus + text : text
 }
 
@@ -66,6 +66,11 @@ export function formatUnit(unit: string): string {
 
 function raise(power: number): string {
   return [...String(power)].map(character => superscripts[character] ?? character).join('')
+}
+
+/** Digits beyond the significant ones before the point become zeros, not a power of ten. */
+function significant(size: number, digits: number): string {
+  return size >= 10 ** digits ? String(Number(size.toPrecision(digits))) : size.toPrecision(digits)
 }
 
 function powerOfTen(size: number, digits: number): string {

@@ -13,8 +13,8 @@ const meanings: Record<string, string> = {
   kd: 'derivative gain',
   ki: 'integral gain',
   kr: 'rate feedback gain',
-  zero: 'zero of the lead',
-  pole: 'pole of the lead',
+  zero: 'of the lead',
+  pole: 'of the lead',
 }
 
 /** The gains in the order in which they are read. */

@@ -1,0 +1,57 @@
+import { describe, expect, it } from 'vitest'
+import { demoScenario } from '~/utils/bench/demo-scenario'
+import { estimateSentence } from '~/utils/bench/estimate-sentence'
+import { sayField, sayIssue } from '~/utils/bench/field-words'
+import { negativeGainSentence } from '~/utils/bench/gain-words'
+import { formatLimit, readingDescriptions } from '~/utils/bench/readings'
+import { readingNames } from '#shared/schemas/design'
+import { scenarioDocumentSchema } from '#shared/schemas/document'
+import { solveDesign } from '#shared/control/solve'
+import type { Readings } from '#shared/control/types'
+
+const design = (overshoot: number | null, settling: number | null, stable = true) => ({
+  stable,
+  readings: { overshootPercent: overshoot, settlingTime: settling } as Readings,
+  estimate: { overshootPercent: 10, settlingTime: 4, peakTime: 1, riseTime: 1 },
+})
+
+describe('sentences of the bench', () => {
+  it('says how far the rules of thumb are off', () => {
+    expect(estimateSentence(design(16.3, 4))).toBe('The overshoot is 6.3 points above the second-order estimate.')
+    expect(estimateSentence(design(10.5, 3))).toBe('The loop settles 25 % sooner than the rule of thumb.')
+    expect(estimateSentence(design(8, 12))).toBe('The overshoot is 2.0 points below the second-order estimate, and settling takes 3.0 times the rule of thumb.')
+    expect(estimateSentence(design(10.9, 4.1))).toMatch(/^The second-order estimate is close here/)
+    expect(estimateSentence(design(null, null, false))).toBeNull()
+  })
+
+  it('tells negative gains in words, places of a lead left out', () => {
+    expect(negativeGainSentence({ kp: -1, kd: 2 })).toBe('kp is negative: this point asks for positive feedback.')
+    expect(negativeGainSentence({ kp: -1, ki: -2 })).toBe('kp and ki are negative: this point asks for positive feedback.')
+    expect(negativeGainSentence({ k: 3, zero: -1, pole: -10 })).toBeNull()
+  })
+
+  it('names fields as the bench does', () => {
+    expect(sayField('loop.plant.parameters.J.value')).toBe('Parameter J')
+    expect(sayField('requirements.2.value')).toBe('Requirement 3')
+    expect(sayField('loop.plant.denominator.0')).toBe('Denominator')
+    expect(sayIssue({ path: '', message: 'no body' })).toBe('no body')
+  })
+
+  it('describes every reading that a requirement may name, once', () => {
+    expect(readingDescriptions.map(({ name }) => name).sort()).toEqual([...readingNames].sort())
+    expect(formatLimit({ reading: 'settlingTime', limit: 'at-most', value: 3.5 })).toBe('≤\u00A03.5\u00A0s')
+    expect(formatLimit({ reading: 'phaseMarginDeg', limit: 'at-least', value: 50 })).toBe('≥\u00A050°')
+  })
+})
+
+describe('the demo axis', () => {
+  it('is a valid document whose design lies on the locus and meets what is asked', () => {
+    const { document } = demoScenario
+    expect(scenarioDocumentSchema.safeParse(document).success).toBe(true)
+    const [kt, J, b, T] = [26000, 2.4e6, 3e6, 0.09]
+    const plant = { numerator: [kt], denominator: [J * T, J + b * T, b, 0] }
+    const designPoint = document.designPoint as { re: number, im: number }
+    const solution = solveDesign({ plant, rateFeedback: 0 }, { form: 'gain' }, { designPoint }, { requirements: document.requirements })
+    expect([solution.onLocus, solution.stable, solution.unmet]).toEqual([true, true, 0])
+  })
+})

@@ -78,7 +78,7 @@ describe('the first visit', () => {
     expect(await someone.page.locator('[data-test="zeta"]').inputValue()).toBe('brisk')
     expect(await bench.gain()).toBe(gain)
     await bench.type('zeta', 1.5)
-    await someone.page.getByText('a damping ratio lies between').waitFor()
+    await someone.page.getByRole('alert').filter({ hasText: 'a damping ratio lies between' }).waitFor()
   })
 
   it('restores where a drag began when Escape is pressed', async () => {

@@ -17,7 +17,7 @@ export default defineEventHandler((event) => {
   // A page is rendered for whoever asks: their name may stand on it, a scenario of theirs perhaps too.
   const open = path === '/' || path === '/sign-in' || path === '/register'
   setResponseHeader(event, 'Cache-Control', open ? 'private, no-cache' : 'no-store')
-  if (useRuntimeConfig(event).public.siteUrl.startsWith('https://')) {
+  if (useRuntimeConfig().public.siteUrl.startsWith('https://')) {
     setResponseHeader(event, 'Strict-Transport-Security', `max-age=${year}; includeSubDomains`)
   }
 })

@@ -11,7 +11,7 @@ export default defineEventHandler(async (event) => {
   const host = getRequestHeader(event, 'host')
   if (event.path.startsWith('/api/') && host !== undefined && !URL.canParse(`http://${host}`)) throw failure(400, 'The Host header names no host.')
   if (harmless.has(event.method)) return
-  const ownSite = useRuntimeConfig(event).public.siteUrl
+  const ownSite = useRuntimeConfig().public.siteUrl
   if (isForeign(getRequestHeader(event, 'sec-fetch-site'), getRequestHeader(event, 'origin'), host, ownSite)) {
     console.warn('[refused] a write from another site')
     throw failure(403, 'This request came from another site.')

@@ -16,7 +16,8 @@ const limiters = {
 const streamsPerAddress = 200
 const openStreams = new Map<string, number>()
 
-const isOff = (event: H3Event) => useRuntimeConfig(event).rateLimits === 'off'
+// Without the event: settings do not change between requests, and asking per event reads the whole environment anew each time.
+const isOff = () => useRuntimeConfig().rateLimits === 'off'
 
 /**
  * The caller's address. X-Forwarded-For counts only when a proxy of one's own is configured, and then only its last entry, which that
@@ -24,7 +25,7 @@ const isOff = (event: H3Event) => useRuntimeConfig(event).rateLimits === 'off'
  */
 export function callerAddress(event: H3Event): string {
   const direct = event.node.req.socket?.remoteAddress ?? 'unknown'
-  if (String(useRuntimeConfig(event).trustProxy) !== 'true') return direct
+  if (String(useRuntimeConfig().trustProxy) !== 'true') return direct
   return getRequestHeader(event, 'x-forwarded-for')?.split(',').at(-1)?.trim() || direct
 }
 
@@ -44,7 +45,7 @@ function refuse(event: H3Event, waitSeconds: number) {
 
 /** Guard: one more request of this kind, or 429 with Retry-After. */
 export async function limit(event: H3Event, name: keyof typeof limiters, key = callerAddress(event)) {
-  if (isOff(event)) return
+  if (isOff()) return
   const wait = await consume(name, key)
   if (wait === undefined) return
   console.warn('[limit]', name, callerAddress(event))
@@ -70,7 +71,7 @@ export async function forgiveSignIn(event: H3Event, email: string) {
 export function limitStreams(event: H3Event): () => void {
   const address = callerAddress(event)
   const count = openStreams.get(address) ?? 0
-  if (count >= streamsPerAddress && !isOff(event)) throw refuse(event, 30)
+  if (count >= streamsPerAddress && !isOff()) throw refuse(event, 30)
   openStreams.set(address, count + 1)
   return () => {
     const left = (openStreams.get(address) ?? 1) - 1

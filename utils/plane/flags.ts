@@ -11,15 +11,22 @@ export interface FlagPlace<Flag> {
   cloth: ScreenPoint
 }
 
-/** Where flags stand; one that would cover another gets a longer pole. */
-export function placeFlags<Flag extends { point: Complex }>(flags: readonly Flag[], viewport: Viewport): FlagPlace<Flag>[] {
+/** Room that the design point needs around it, to be seen and to be grabbed. */
+const handRoom = 16
+
+/** Where flags stand; one that would cover another, or the design point, gets a longer pole. */
+export function placeFlags<Flag extends { point: Complex }>(flags: readonly Flag[], viewport: Viewport, designPoint: Complex): FlagPlace<Flag>[] {
+  const hand = toScreen(viewport, designPoint)
   const placed: FlagPlace<Flag>[] = []
   for (const flag of flags) {
     const foot = toScreen(viewport, flag.point)
     const cloth = { x: foot.x, y: foot.y - flagSize.pole - flagSize.height }
     const covers = (other: FlagPlace<Flag>) =>
       Math.abs(other.cloth.x - cloth.x) < flagSize.width && Math.abs(other.cloth.y - cloth.y) < flagSize.height + 2
-    while (placed.some(covers)) cloth.y -= flagSize.height + 3
+    const coversHand = () =>
+      hand.x > cloth.x - handRoom && hand.x < cloth.x + flagSize.width + handRoom
+      && hand.y > cloth.y - handRoom && hand.y < cloth.y + flagSize.height + handRoom
+    while (coversHand() || placed.some(covers)) cloth.y -= flagSize.height + 3
     placed.push({ flag, foot, cloth })
   }
   return placed

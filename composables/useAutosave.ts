@@ -1,116 +1,33 @@
 import type { ScenarioDocument } from '#shared/schemas/document'
 import type { Scenario } from '#shared/schemas/scenario'
-import { toComplex, type BenchDocument } from '~/stores/bench'
-
-export type SaveState =
-  | { kind: 'saved' }
-  | { kind: 'pending' }
-  | { kind: 'saving' }
-  | { kind: 'failed', failure: ApiFailure }
-  | { kind: 'conflict', theirs: Scenario }
-
-interface Snapshot {
-  document: BenchDocument
-  title: string
-  machine: string
-  axis: string
-}
-
-const quietMs = 700
-const retryMs = [2_000, 4_000, 8_000, 15_000, 30_000]
+import { toComplex } from '~/utils/bench/bench-document'
+import { saveMachine, type SaveState, type Snapshot } from '~/utils/save-machine'
 
 /**
- * Saves the scenario on the bench whenever the hand rests. Each save carries the version it began from; when somebody else was
- * faster the state becomes `conflict` and nothing is written until the person has chosen. Until the server has acknowledged a
- * change it is also kept in the browser.
+ * Saves the scenario on the bench for as long as the calling component lives (see `saveMachine`). Until the server has acknowledged a change it
+ * is also kept in the browser.
  */
-export function useAutosave(options: { draftKey: string }) {
+export function useAutosave({ scenarioId, draftKey }: { scenarioId: string, draftKey: string }) {
   const bench = useBenchStore()
   const state = shallowRef<SaveState>({ kind: 'saved' })
-  let acknowledged = snapshot()
-  let timer: ReturnType<typeof setTimeout> | undefined
-  let running: Promise<void> | null = null
-  let failures = 0
-  let stopped = false
+
+  const machine = saveMachine({
+    saved: snapshot(),
+    version: bench.version!,
+    send: (version, sent) => callApi<Scenario>(`/api/scenarios/${scenarioId}`, { method: 'PATCH', body: { version, ...sent } }),
+    keep: (version, { document, ...names }) => keepDraft(localStorage, draftKey, { ...names, document, version }),
+    drop: () => dropDraft(localStorage, draftKey),
+    show: (shown) => { state.value = shown },
+    onSaved: ({ id, version }, { document }) => bench.markSaved({ id, version, document }),
+  })
 
   function snapshot(): Snapshot {
     return { document: toRaw(bench.document), title: bench.title, machine: bench.machine, axis: bench.axis }
   }
 
-  function changedSince(before: Snapshot): boolean {
-    const now = snapshot()
-    return now.document !== before.document || now.title !== before.title || now.machine !== before.machine || now.axis !== before.axis
-  }
-
-  function schedule(afterMs: number) {
-    clearTimeout(timer)
-    timer = setTimeout(() => void save(), afterMs)
-  }
-
-  function onChange() {
-    if (stopped) return
-    if (!changedSince(acknowledged)) {
-      if (state.value.kind === 'pending') settle()
-      return
-    }
-    keepLocally()
-    if (state.value.kind === 'conflict') return
-    state.value = { kind: 'pending' }
-    if (bench.gestureStart === null) schedule(quietMs)
-  }
-
-  function keepLocally() {
-    keepDraft(localStorage, options.draftKey, { ...snapshot(), version: bench.version, keptAt: new Date().toISOString() })
-  }
-
-  function settle() {
-    clearTimeout(timer)
-    dropDraft(localStorage, options.draftKey)
-    state.value = { kind: 'saved' }
-  }
-
-  /** One save at a time; a change that came meanwhile is saved right after. */
-  function save(): Promise<void> {
-    running ??= send().finally(() => { running = null })
-    return running
-  }
-
-  async function send() {
-    clearTimeout(timer)
-    if (state.value.kind === 'conflict' || settled()) return
-    const sent = snapshot()
-    state.value = { kind: 'saving' }
-    try {
-      const answer = await callApi<Scenario>(`/api/scenarios/${bench.scenarioId}`, {
-        method: 'PATCH', body: { version: bench.version, ...sent },
-      })
-      acknowledge(sent, answer)
-    } catch (thrown) {
-      fail(readFailure(thrown))
-    }
-  }
-
-  function acknowledge(sent: Snapshot, answer: Scenario) {
-    failures = 0
-    acknowledged = sent
-    bench.markSaved({ id: answer.id, version: answer.version, document: sent.document })
-    if (changedSince(sent)) onChange()
-    else settle()
-  }
-
-  function fail(failure: ApiFailure) {
-    if (failure.status === 409 && failure.current) {
-      state.value = { kind: 'conflict', theirs: failure.current as Scenario }
-      return
-    }
-    state.value = { kind: 'failed', failure }
-    if (failure.temporary) schedule(retryMs[Math.min(failures++, retryMs.length - 1)]!)
-  }
-
-  /** Changes that never reached the server come back to the bench. When others were saved since, the person chooses. */
-  function takeUp(draft: LocalDraft, document: ScenarioDocument, present: Scenario) {
-    if (draft.version !== present.version) state.value = { kind: 'conflict', theirs: present }
-    put({ title: draft.title, machine: draft.machine, axis: draft.axis, document })
+  /** Another scenario may stand on the bench before this one's page is gone. */
+  function tell() {
+    if (bench.scenarioId === scenarioId) machine.changed(snapshot(), bench.gestureStart === null)
   }
 
   function put({ document, title, machine, axis }: Pick<Scenario, 'document' | 'title' | 'machine' | 'axis'>) {
@@ -120,57 +37,45 @@ export function useAutosave(options: { draftKey: string }) {
     bench.axis = axis
   }
 
-  /** The person keeps their own version: it is written over the other one, knowingly. */
-  async function keepMine() {
-    if (state.value.kind !== 'conflict') return
-    bench.version = state.value.theirs.version
-    state.value = { kind: 'pending' }
-    await save()
-  }
-
-  /** The person takes the other version. Theirs becomes the bench; their own document stays reachable by undo. */
-  function takeTheirs() {
-    if (state.value.kind !== 'conflict') return
-    accept(state.value.theirs)
+  /** Changes that never reached the server come back to the bench. */
+  function takeUp(draft: LocalDraft, document: ScenarioDocument, present: Scenario) {
+    machine.resume(draft.version ?? 0, present)
+    put({ title: draft.title, machine: draft.machine, axis: draft.axis, document })
   }
 
   /** A version from the server goes on the bench as it is; what stood there stays reachable by undo. */
   function accept(newer: Scenario) {
     put(newer)
-    acknowledged = snapshot()
-    bench.markSaved({ id: newer.id, version: newer.version })
-    settle()
+    const now = snapshot()
+    bench.markSaved({ id: newer.id, version: newer.version, document: now.document })
+    machine.accept(newer.version, now)
   }
 
-  function settled(): boolean {
-    return stopped || !changedSince(acknowledged)
-  }
-
-  /** From here on the scenario is somebody else's business. */
-  function stop() {
-    stopped = true
-    clearTimeout(timer)
+  /** Saves what is on the bench now; answers whether the server has it all. */
+  async function flush(): Promise<boolean> {
+    tell()
+    await machine.flush()
+    return machine.settled()
   }
 
   function onUnload(event: BeforeUnloadEvent) {
-    if (settled()) return
-    keepLocally()
-    event.preventDefault()
+    tell()
+    if (!machine.settled()) event.preventDefault()
   }
 
-  const onOnline = () => { if (state.value.kind === 'failed') void save() }
+  const onOnline = () => { if (state.value.kind === 'failed') void machine.save() }
 
-  watch(() => [bench.document, bench.title, bench.machine, bench.axis, bench.gestureStart], onChange)
+  watch(() => [bench.document, bench.title, bench.machine, bench.axis, bench.gestureStart], tell)
   onMounted(() => {
     addEventListener('beforeunload', onUnload)
     addEventListener('online', onOnline)
   })
   onScopeDispose(() => {
-    clearTimeout(timer)
+    machine.stop()
     if (import.meta.server) return
     removeEventListener('beforeunload', onUnload)
     removeEventListener('online', onOnline)
   })
 
-  return { state, save, takeUp, keepMine, takeTheirs, accept, settled, stop }
+  return { state, flush, takeUp, accept, keepMine: machine.keepMine, stop: machine.stop }
 }

@@ -9,14 +9,14 @@ export function useDemoDraft() {
     watch(() => [bench.document, bench.title, bench.machine, bench.axis, bench.gestureStart], () => {
       if (bench.mode !== 'demo' || bench.gestureStart !== null) return
       const { title, machine, axis } = bench
-      keepDraft(localStorage, demoDraftKey, { title, machine, axis, document: toRaw(bench.document), version: null, keptAt: new Date().toISOString() })
+      keepDraft(localStorage, demoDraftKey, { title, machine, axis, document: toRaw(bench.document), version: null })
     })
   }
 
   async function restore(): Promise<string | null> {
     const draft = readDraft(localStorage, demoDraftKey)
     if (draft === null) return null
-    const document = await readDocument(draft.document)
+    const document = await readDraftDocument(draft)
     if (document === null) {
       forget()
       return null

@@ -37,12 +37,13 @@ export function useSaveIntent() {
   /** Puts the bench under "My scenarios" and returns the new scenario. */
   async function saveAsNew(details: SaveDetails): Promise<Scenario> {
     const document = toRaw(bench.document)
+    const wasDemo = bench.mode === 'demo'
     const scenario = await callApi<Scenario>('/api/scenarios', { method: 'POST', body: { ...details, document } })
     bench.title = scenario.title
     bench.machine = scenario.machine
     bench.axis = scenario.axis
     bench.markSaved({ id: scenario.id, version: scenario.version, document })
-    dropDraft(localStorage, demoDraftKey)
+    if (wasDemo) dropDraft(localStorage, demoDraftKey)
     forget()
     return scenario
   }

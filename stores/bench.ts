@@ -1,10 +1,7 @@
-import { pointFromDamping } from '#shared/control/design-point'
 import type { Complex } from '#shared/numerics/complex'
 import type { ScenarioDocument } from '#shared/schemas/document'
 import type { Parameter, Plant } from '#shared/schemas/loop'
-
-/** The scenario document as the bench holds it: the design point always in rectangular form. */
-export type BenchDocument = Omit<ScenarioDocument, 'designPoint'> & { designPoint: Complex }
+import { toComplex, type BenchDocument } from '~/utils/bench/bench-document'
 
 /** `demo`: not saved anywhere; `own`: a scenario that may be saved; `shared`: a visitor's what-if, which changes nothing. */
 export type BenchMode = 'demo' | 'own' | 'shared'
@@ -28,7 +25,7 @@ const undoDepth = 200
  * Where each field may travel:
  * | saved with the scenario | document, title, machine, axis |
  * | told to the server when saving, never part of the document | scenarioId, version |
- * | this page alone | mode, baseline, undo and redo steps, gesture, plantDrafts, parameterMemory |
+ * | this page alone | mode, loads, baseline, undo and redo steps, gesture, plantDrafts, parameterMemory |
  */
 export const useBenchStore = defineStore('bench', () => {
   const document = shallowRef<BenchDocument>(emptyDocument())
@@ -38,6 +35,8 @@ export const useBenchStore = defineStore('bench', () => {
   const scenarioId = ref<string | null>(null)
   const version = ref<number | null>(null)
   const mode = ref<BenchMode>('demo')
+  /** Counts what was put on the bench: text that was being typed into an earlier document belongs to that one. */
+  const loads = ref(0)
   /** What was loaded or saved last; null: nothing that anybody could return to. */
   const baseline = shallowRef<{ document: BenchDocument, title: string, machine: string, axis: string } | null>(null)
   const past = shallowRef<readonly BenchDocument[]>([])
@@ -58,6 +57,7 @@ export const useBenchStore = defineStore('bench', () => {
 
   /** Puts a scenario on the bench; the steps of the one before are gone. */
   function load(content: BenchContent) {
+    loads.value += 1
     document.value = { ...copy(content.document), designPoint: toComplex(content.document.designPoint) }
     title.value = content.title
     machine.value = content.machine ?? ''
@@ -145,16 +145,11 @@ export const useBenchStore = defineStore('bench', () => {
   }
 
   return {
-    document, title, machine, axis, scenarioId, version, mode, baseline, past, future, gestureStart, plantDrafts, parameterMemory,
+    document, title, machine, axis, scenarioId, version, mode, loads, baseline, past, future, gestureStart, plantDrafts, parameterMemory,
     canUndo, canRedo, dirty,
     load, markSaved, change, beginGesture, moveDesignPoint, endGesture, cancelGesture, undo, redo,
   }
 })
-
-/** A design point in rectangular form. */
-export function toComplex(point: ScenarioDocument['designPoint']): Complex {
-  return 're' in point ? { re: point.re, im: point.im } : pointFromDamping(point.dampingRatio, point.naturalFrequency)
-}
 
 function emptyDocument(): BenchDocument {
   return {

@@ -1,9 +1,12 @@
+import { documentVersion } from '#shared/document/format'
+
 /** Work that the server does not have yet, kept in the browser so that a reload or a dead battery loses nothing. */
 export interface LocalDraft {
   title: string
   machine: string
   axis: string
   document: unknown
+  documentVersion: number
   /** The version that the work began from; null for a bench that was never saved. */
   version: number | null
   keptAt: string
@@ -18,7 +21,8 @@ export const demoDraftKey = `${prefix}draft`
 export const scenarioDraftKey = (scenarioId: string) => `${prefix}unsaved:${scenarioId}`
 
 /** Storage may be full, or forbidden by the browser's settings: then there is simply no draft. */
-export function keepDraft(storage: Storage, key: string, draft: LocalDraft): boolean {
+export function keepDraft(storage: Storage, key: string, work: Omit<LocalDraft, 'documentVersion' | 'keptAt'>): boolean {
+  const draft: LocalDraft = { ...work, documentVersion, keptAt: new Date().toISOString() }
   try {
     storage.setItem(key, JSON.stringify(draft))
     return true
@@ -48,7 +52,7 @@ export function dropDraft(storage: Storage, key: string): void {
 /** Signing out leaves nothing of a person's scenarios behind in the browser. */
 export function dropAllDrafts(storage: Storage): void {
   try {
-    const ours = Object.keys(storage).filter(key => key.startsWith(prefix) && key !== `${prefix}theme`)
+    const ours = Object.keys(storage).filter(key => key.startsWith(prefix))
     for (const key of ours) storage.removeItem(key)
   } catch {
     // Nothing could be kept there either.
@@ -57,8 +61,9 @@ export function dropAllDrafts(storage: Storage): void {
 
 function isDraft(value: unknown): value is LocalDraft {
   if (typeof value !== 'object' || value === null) return false
-  const { title, machine, axis, document, version, keptAt } = value as Record<string, unknown>
+  const { title, machine, axis, document, documentVersion, version, keptAt } = value as Record<string, unknown>
   return [title, machine, axis, keptAt].every(text => typeof text === 'string')
+    && typeof documentVersion === 'number'
     && (version === null || typeof version === 'number')
     && typeof document === 'object' && document !== null
 }

@@ -1,7 +1,5 @@
 import { scenarioDocumentSchema, type ScenarioDocument } from '../schemas/document'
-
-/** The number of the saved format. Raise it with every change that older readers would misread, and add the step to `migrations`. */
-export const documentVersion = 1
+import { documentVersion } from './format'
 
 type Step = (document: Record<string, unknown>) => Record<string, unknown>
 

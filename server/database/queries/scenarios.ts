@@ -1,5 +1,6 @@
 import { and, asc, count, desc, eq, inArray, isNotNull, isNull, like, or, sql, type SQL } from 'drizzle-orm'
-import { documentVersion, readDocument } from '#shared/document/version'
+import { documentVersion } from '#shared/document/format'
+import { readDocument } from '#shared/document/version'
 import type { CreateScenarioBody, Scenario, ScenarioListQuery, ScenarioPage, ScenarioSummary, UpdateScenarioBody } from '#shared/schemas/scenario'
 import { shortId } from '../../utils/ids'
 import { atomically, database } from '../client'

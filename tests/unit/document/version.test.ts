@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { documentVersion, readDocument } from '#shared/document/version'
+import { documentVersion } from '#shared/document/format'
+import { readDocument } from '#shared/document/version'
 import { slewDocument } from '../../fixtures/document'
 
 /** A history of two changes: the notes were once called remarks, and once a list. */

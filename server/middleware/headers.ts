@@ -1,6 +1,6 @@
 const year = 31_536_000
 
-/** Headers that every dynamic answer carries; the content security policy of pages is set where their nonce is made. */
+/** Headers that every dynamic answer carries. */
 export default defineEventHandler((event) => {
   const path = event.path.split('?')[0] ?? '/'
   const shared = path.startsWith('/s/') || path.startsWith('/api/shared/')
@@ -11,9 +11,8 @@ export default defineEventHandler((event) => {
     'Referrer-Policy': shared ? 'no-referrer' : 'same-origin',
   })
   if (shared) setResponseHeader(event, 'X-Robots-Tag', 'noindex, nofollow')
-  if (path.startsWith('/api/')) {
-    setResponseHeader(event, 'Content-Security-Policy', `default-src 'none'; frame-ancestors 'none'`)
-  }
+  // Pages put a policy of their own in its place, with the nonce of their scripts.
+  setResponseHeader(event, 'Content-Security-Policy', `default-src 'none'; frame-ancestors 'none'`)
   // A page is rendered for whoever asks: their name may stand on it, a scenario of theirs perhaps too.
   const open = path === '/' || path === '/sign-in' || path === '/register'
   setResponseHeader(event, 'Cache-Control', open ? 'private, no-cache' : 'no-store')

@@ -9,7 +9,7 @@ const harmless = new Set(['GET', 'HEAD', 'OPTIONS'])
  */
 export default defineEventHandler(async (event) => {
   const host = getRequestHeader(event, 'host')
-  if (event.path.startsWith('/api/') && host !== undefined && !URL.canParse(`http://${host}`)) throw failure(400, 'The Host header names no host.')
+  if (host !== undefined && !URL.canParse(`http://${host}`)) throw failure(400, 'The Host header names no host.')
   if (harmless.has(event.method)) return
   const ownSite = useRuntimeConfig().public.siteUrl
   if (isForeign(getRequestHeader(event, 'sec-fetch-site'), getRequestHeader(event, 'origin'), host, ownSite)) {

@@ -3,9 +3,18 @@ import type { Issue } from '#shared/schemas/errors'
 
 type ZodIssue = z.core.$ZodIssue
 
-/** Every fault that zod found, each with the dotted path of its field. */
+/** More faults than this nobody reads, and an answer need not be longer than its question. */
+const most = 20
+const longest = 200
+
+/** The faults that zod found, each with the dotted path of its field. */
 export function issuesOf(error: z.ZodError): Issue[] {
-  return error.issues.flatMap(issue => flatten(issue, []))
+  return error.issues.slice(0, most).flatMap(issue => flatten(issue, [])).slice(0, most)
+    .map(({ path, message }) => ({ path: shortened(path), message: shortened(message) }))
+}
+
+function shortened(text: string): string {
+  return text.length > longest ? `${text.slice(0, longest - 1)}…` : text
 }
 
 function flatten(issue: ZodIssue, parents: PropertyKey[]): Issue[] {

@@ -2,9 +2,13 @@ import type { H3Event } from 'h3'
 import { RateLimiterMemory, RateLimiterRes } from 'rate-limiter-flexible'
 import { failure } from './errors'
 
-/** Points per duration in seconds. Compute admits well over 120 a second, so that a hand never meets the limit. */
+/**
+ * Points per duration in seconds. Compute admits well over 120 requests a second, so that a hand never meets the limit; its time, in milliseconds,
+ * keeps those who ask for the dearest designs from taking more than a third of a core.
+ */
 const limiters = {
   compute: new RateLimiterMemory({ points: 1200, duration: 5 }),
+  computingTime: new RateLimiterMemory({ points: 20_000, duration: 60 }),
   signInFromAddress: new RateLimiterMemory({ points: 60, duration: 15 * 60 }),
   signInToAccount: new RateLimiterMemory({ points: 10, duration: 15 * 60 }),
   register: new RateLimiterMemory({ points: 20, duration: 60 * 60 }),
@@ -52,7 +56,25 @@ export async function limit(event: H3Event, name: keyof typeof limiters, key = c
   throw refuse(event, wait)
 }
 
-export const limitCompute = (event: H3Event) => limit(event, 'compute')
+/** Guard for computing: how often, and for how much time of the server. */
+export async function limitCompute(event: H3Event) {
+  await limit(event, 'compute')
+  if (isOff()) return
+  const spent = await limiters.computingTime.get(callerAddress(event))
+  if (spent === null || spent.remainingPoints > 0) return
+  console.warn('[limit] computingTime', callerAddress(event))
+  throw refuse(event, Math.max(1, Math.ceil(spent.msBeforeNext / 1000)))
+}
+
+/** Does the work and puts its time to the caller's account. */
+export async function compute<Answer>(event: H3Event, work: () => Answer): Promise<Answer> {
+  const started = performance.now()
+  try {
+    return work()
+  } finally {
+    if (!isOff()) await limiters.computingTime.penalty(callerAddress(event), Math.ceil(performance.now() - started))
+  }
+}
 
 const accountFromAddress = (event: H3Event, email: string) => `${email} ${callerAddress(event)}`
 

@@ -68,14 +68,14 @@ function properRatio(numerator: number[], denominator: number[], path: string, f
   const { numerator: above = `${path}.numerator`, denominator: below = `${path}.denominator`, improperAllowed = false } = fields
   if (isZero(denominator)) throw new InvalidInputError(below, 'the denominator is zero')
   if (isZero(numerator)) throw new InvalidInputError(above, 'the numerator is zero: such a plant does not answer its input')
-  const ratio = transferFunction(trim(numerator), trim(denominator))
-  if (![...ratio.numerator, ...ratio.denominator].every(Number.isFinite)) {
-    throw new InvalidInputError(above, 'the coefficients grow beyond what can be computed')
+  for (const [coefficients, field] of [[numerator, above], [denominator, below]] as const) {
+    if (!coefficients.every(Number.isFinite)) throw new InvalidInputError(field, 'the coefficients grow beyond what can be computed')
   }
+  const ratio = transferFunction(trim(numerator), trim(denominator))
   const [zeros, poles] = [ratio.numerator.length - 1, ratio.denominator.length - 1]
   if (Math.max(zeros, poles) > limits.plantOrder) throw new InvalidInputError(poles >= zeros ? below : above, `the order is beyond ${limits.plantOrder}`)
   if (zeros > poles && !improperAllowed) {
-    throw new InvalidInputError(above, `the numerator has order ${zeros}, the denominator ${poles}: such a plant answers before it is asked`)
+    throw new InvalidInputError(above, `the numerator has order ${zeros}, the denominator ${poles}: such a plant is improper: it would answer before it is asked`)
   }
   return ratio
 }

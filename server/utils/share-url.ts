@@ -4,7 +4,7 @@ import type { Link } from '../database/queries/links'
 
 /** A link as its scenario's people see it. The address is the configured site's, or else the one that was asked. */
 export function toShareLink(event: H3Event, link: Link): ShareLink {
-  const site = useRuntimeConfig().public.siteUrl || getRequestURL(event).origin
+  const site = useRuntimeConfig().public.siteUrl || getRequestURL(event, { xForwardedProto: String(useRuntimeConfig().trustProxy) === 'true' }).origin
   return {
     id: link.id,
     token: link.token,

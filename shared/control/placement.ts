@@ -45,16 +45,24 @@ function place(model: LoopModel, controller: Controller, designPoint: Complex): 
   switch (controller.form) {
     case 'gain': return placeOneGain(openLoop(model, controller), designPoint)
     case 'lead': return reached(placeLead(effectivePlant(model), controller.poleZeroRatio, designPoint))
-    case 'pi': return reached([placeProportionalIntegral(effectivePlant(model), designPoint)])
+    case 'pi': {
+      const { kp, ki } = placeProportionalIntegral(effectivePlant(model), designPoint)
+      return reached([{ kp, ki: orNothing(ki, kp, 1 / complex.abs(designPoint)) }])
+    }
     case 'pd': {
       const { constant, slope } = lineThrough(effectivePlant(model), designPoint)
-      return reached([{ kp: constant, kd: slope }])
+      return reached([{ kp: constant, kd: orNothing(slope, constant, complex.abs(designPoint)) }])
     }
     case 'rate': {
       const { constant, slope } = lineThrough(effectivePlant(model), designPoint)
-      return reached([{ kp: constant, kr: slope }])
+      return reached([{ kp: constant, kr: orNothing(slope, constant, complex.abs(designPoint)) }])
     }
   }
+}
+
+/** What rounding leaves of a gain that should be 0: where the other gain does all the work, the sign of a last digit is no advice. */
+function orNothing(gain: number, other: number, weight: number): number {
+  return Math.abs(gain) * weight <= 1e-13 * Math.abs(other) ? 0 : gain
 }
 
 function reached([gains, ...alternatives]: Gains[]): Placement {
@@ -89,7 +97,7 @@ function lineThrough(plant: TransferFunction, s: Complex): { constant: number, s
 }
 
 /** kp + ki/s = -D/N; at a real point in value and slope. */
-function placeProportionalIntegral(plant: TransferFunction, s: Complex): Gains {
+function placeProportionalIntegral(plant: TransferFunction, s: Complex): { kp: number, ki: number } {
   const square = s.re * s.re + s.im * s.im
   if (square === 0) throw new NoAnswerError('the design point lies on the integrator of the PI controller, where no gains put a root', 'designPoint')
   if (s.im === 0) {

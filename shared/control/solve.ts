@@ -10,7 +10,7 @@ import { estimateAt } from './estimate'
 import { placeGains, type Placement } from './placement'
 import { readAll } from './readings'
 import { respondTo, sampleResponse } from './response/response'
-import { diesOut } from './response/trajectory'
+import { diesOut } from './stability'
 import type { Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
 import { judge } from './verdicts'
 

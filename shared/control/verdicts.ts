@@ -5,8 +5,14 @@ import type { ReadingName, Readings, Requirement, Verdict } from './types'
 /** Readings of which null in a stable loop means "without limit": no gain, delay or frequency is large enough to reach the border. */
 const unlimited: readonly ReadingName[] = ['gainMarginDb', 'phaseMarginDeg', 'delayMargin', 'bandwidth']
 
+/** Readings that mean something in a stable loop only: a margin tells how far stability is, not whether it is there. */
+const ofStableLoops: readonly ReadingName[] = [...unlimited, 'sensitivityPeak']
+/** Signed readings whose limits mean their size. */
+const limitedInSize: readonly ReadingName[] = ['steadyStateErrorStep', 'steadyStateErrorRamp']
+
 /**
- * Each requirement with the figure found and whether it is met (limits included).
+ * Each requirement with the figure found and whether it is met (limits included). No margin, bandwidth or sensitivity peak of an unstable loop meets
+ * anything; a limit on a steady-state error holds for its size, whichever its sign.
  *
  * A figure that does not exist (null) meets nothing, with one exception: a stable loop whose margin or bandwidth has no limit at all meets
  * every "at least". The reading `dampingRatio` is that of the least damped closed-loop pole, whichever it is: a well-placed design pair does
@@ -15,11 +21,15 @@ const unlimited: readonly ReadingName[] = ['gainMarginDb', 'phaseMarginDeg', 'de
 export function judge(requirements: readonly Requirement[], readings: Readings, closedLoopPoles: readonly Complex[], stable: boolean): Verdict[] {
   return requirements.map(({ reading, limit, value }) => {
     const actual = reading === 'dampingRatio' ? leastDamping(closedLoopPoles) : readings[reading]
-    const met = actual === null
-      ? stable && limit === 'at-least' && unlimited.includes(reading)
-      : limit === 'at-most' ? actual <= value : actual >= value
-    return { reading, limit, value, actual, met }
+    return { reading, limit, value, actual, met: isMet({ reading, limit, value }, actual, stable) }
   })
+}
+
+function isMet({ reading, limit, value }: Requirement, actual: number | null, stable: boolean): boolean {
+  if (!stable && ofStableLoops.includes(reading)) return false
+  if (actual === null) return limit === 'at-least' && unlimited.includes(reading)
+  const figure = limitedInSize.includes(reading) ? Math.abs(actual) : actual
+  return limit === 'at-most' ? figure <= value : figure >= value
 }
 
 /** The smallest damping ratio among the poles; null where there are none. */

@@ -1,13 +1,15 @@
 import { z } from 'zod'
 import { limits } from './limits'
+import { visibleName } from './text'
 
 const email = z.string().trim().toLowerCase().max(limits.email).pipe(z.email('this is not an e-mail address'))
 const password = z.string()
   .min(limits.password.least, `a password has at least ${limits.password.least} characters`)
   .max(limits.password.most, `a password has at most ${limits.password.most} characters`)
+  .refine(password => password.trim() !== '', 'a password is more than blanks')
 
 export const registerBodySchema = z.strictObject({
-  name: z.string().trim().min(1, 'tell colleagues who you are').max(limits.name),
+  name: visibleName(limits.name, 'tell colleagues who you are'),
   email,
   password,
 })

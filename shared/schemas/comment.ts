@@ -2,6 +2,7 @@ import { z } from 'zod'
 import { complexSchema, finiteNumber } from './complex'
 import { designPointSchema, readingNames } from './design'
 import { limits } from './limits'
+import { visibleName } from './text'
 
 export const anchorSchema = z.discriminatedUnion('kind', [
   z.strictObject({ kind: z.literal('plane'), ...complexSchema.shape }),
@@ -19,7 +20,7 @@ export const createCommentBodySchema = z.strictObject({
 
 /** A guest gives a name; a signed-in visitor's own name is used. */
 export const createGuestCommentBodySchema = createCommentBodySchema.extend({
-  name: z.string().trim().min(1, 'tell who you are').max(limits.name).optional(),
+  name: visibleName(limits.name, 'tell who you are').optional(),
 })
 
 export const updateCommentBodySchema = z.strictObject({ resolved: z.boolean() })

@@ -1,6 +1,8 @@
 import { z } from 'zod'
 import { complexSchema, finiteNumber } from './complex'
 import { limits } from './limits'
+import { faultOfName } from './names'
+import { lineOfText } from './text'
 
 const order = limits.plantOrder
 const coefficients = (what: string) =>
@@ -8,15 +10,15 @@ const coefficients = (what: string) =>
 
 export const parameterSchema = z.strictObject({
   value: finiteNumber,
-  unit: z.string().max(limits.parameterUnit).optional(),
+  unit: lineOfText(limits.parameterUnit).optional(),
   tolerancePercent: z.number().min(0).max(100).optional(),
 })
 
-/** A name that the formula may use: a letter, then letters, digits or underscores; s is the Laplace variable. */
-export const parameterNameSchema = z.string()
-  .max(limits.parameterName)
-  .regex(/^\p{L}[\p{L}\p{N}_]*$/u, 'a parameter name is a letter followed by letters, digits or underscores')
-  .refine(name => name !== 's', 's is the Laplace variable and cannot be a parameter')
+/** A name that the formula may use. */
+export const parameterNameSchema = z.string().check(({ value, issues }) => {
+  const fault = faultOfName(value)
+  if (fault !== null) issues.push({ code: 'custom', input: value, message: fault })
+})
 
 export const plantSchema = z.discriminatedUnion('form', [
   z.strictObject({

@@ -1,10 +1,11 @@
 import { z } from 'zod'
 import { scenarioDocumentSchema } from './document'
 import { limits } from './limits'
+import { lineOfText } from './text'
 
-const title = z.string().trim().min(1, 'give the scenario a title').max(limits.title)
-const machine = z.string().trim().max(limits.machine)
-const axis = z.string().trim().max(limits.axis)
+const title = lineOfText(limits.title).min(1, 'give the scenario a title')
+const machine = lineOfText(limits.machine)
+const axis = lineOfText(limits.axis)
 
 export const createScenarioBodySchema = z.strictObject({
   title,

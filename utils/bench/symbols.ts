@@ -1,8 +1,11 @@
-/** Numbers are read first, so that the e of 1e5 is no name. */
-const numberOrName = /(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?|([\p{L}_][\p{L}\p{N}_]*)/gu
+import { functionNames, namePattern, reservedWords } from '#shared/schemas/names'
 
-/** The parameters that a formula names, in order of appearance; s is the Laplace variable. */
+/** Numbers are read first, so that the e of 1e5 is no name. */
+const numberOrName = new RegExp(`(?:\\d+\\.?\\d*|\\.\\d+)(?:[eE][+-]?\\d+)?|(${namePattern})`, 'g')
+const noParameter = new Set(['s', ...reservedWords, ...functionNames])
+
+/** The parameters that a formula names, in order of appearance. */
 export function symbolsOf(expression: string): string[] {
-  const names = [...expression.matchAll(numberOrName)].flatMap(match => match[1] === undefined || match[1] === 's' ? [] : [match[1]])
+  const names = [...expression.matchAll(numberOrName)].flatMap(match => match[1] === undefined || noParameter.has(match[1]) ? [] : [match[1]])
   return [...new Set(names)]
 }

@@ -14,12 +14,14 @@ export interface FlagPlace<Flag> {
 /** Room that the design point needs around it, to be seen and to be grabbed. */
 const handRoom = 16
 
-/** Where flags stand; one that would cover another, or the design point, gets a longer pole. */
+/** Where the flags in view stand; one that would cover another, or the design point, gets a longer pole. */
 export function placeFlags<Flag extends { point: Complex }>(flags: readonly Flag[], viewport: Viewport, designPoint: Complex): FlagPlace<Flag>[] {
   const hand = toScreen(viewport, designPoint)
   const placed: FlagPlace<Flag>[] = []
   for (const flag of flags) {
     const foot = toScreen(viewport, flag.point)
+    const isInView = foot.x >= 0 && foot.x <= viewport.width && foot.y >= 0 && foot.y <= viewport.height
+    if (!isInView) continue
     const cloth = { x: foot.x, y: foot.y - flagSize.pole - flagSize.height }
     const covers = (other: FlagPlace<Flag>) =>
       Math.abs(other.cloth.x - cloth.x) < flagSize.width && Math.abs(other.cloth.y - cloth.y) < flagSize.height + 2

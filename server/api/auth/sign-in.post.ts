@@ -20,5 +20,6 @@ export default defineEventHandler(async (event) => {
   }
   await forgiveSignIn(event, email)
   await signIn(event, user)
+  console.info('[sign-in]', callerAddress(event))
   return { user: publicUser(user) }
 })

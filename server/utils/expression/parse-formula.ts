@@ -3,6 +3,7 @@ import { InvalidInputError } from '#shared/control/errors'
 import type { TransferFunction } from '#shared/control/types'
 import { limits } from '#shared/schemas/limits'
 import type { Parameter } from '#shared/schemas/loop'
+import { functionNames, plainName } from '#shared/schemas/names'
 import { add, constant, divide, expand, isConstant, isZero, laplaceVariable, multiply, negate, OrderError, power, type Rational } from './rational'
 import { type Leaf, scanFormula } from './scan'
 
@@ -29,7 +30,8 @@ interface Walk {
  */
 export function parseFormula(formula: string, parameters: Record<string, Parameter>, path: string): TransferFunction {
   const { text, leaves } = scanFormula(formula, path)
-  const walk: Walk = { path, parameters, leaves: [...leaves], text, depth: 0 }
+  const plain = Object.fromEntries(Object.entries(parameters).map(([name, parameter]) => [plainName(name), parameter]))
+  const walk: Walk = { path, parameters: plain, leaves: [...leaves], text, depth: 0 }
   return expand(convert(parseTree(text, path), walk))
 }
 
@@ -46,11 +48,11 @@ function parseTree(text: string, path: string): MathNode {
 function convert(node: MathNode, walk: Walk): Rational {
   const parts = node as unknown as { value?: unknown, name?: string, content?: MathNode, op?: string, fn?: unknown, args?: MathNode[] }
   switch (node.type) {
-    case 'ConstantNode': return number(parts.value, walk)
+    case 'ConstantNode': return number(parts.value as number, walk)
     case 'SymbolNode': return symbol(walk)
     case 'ParenthesisNode': return deeper(walk, () => convert(parts.content as MathNode, walk))
     case 'OperatorNode': return operation(parts as { fn: string, op: string, args: MathNode[] }, walk)
-    case 'FunctionNode': return refuse(walk, name => `${name} is not a function; write a * before the parenthesis`)
+    case 'FunctionNode': return refuse(walk, notAFunction)
     default: return refuse(walk, () => 'this has no place in a formula; use + - * / ^ ( ), numbers, parameters and s')
   }
 }
@@ -96,11 +98,17 @@ function finite(value: Rational, fault: (message: string) => Error): Rational {
   throw fault('the numbers grow beyond what can be computed here')
 }
 
-function number(value: unknown, walk: Walk): Rational {
-  if (typeof value !== 'number') return refuse(walk, name => `${name} is neither a number nor a parameter`)
+function number(value: number, walk: Walk): Rational {
   const read = walk.leaves.shift()
+  // The tree and the text must tell of the same number: other ways of writing one (0x10) would shift every name after it.
+  if (Number(read?.text) !== value) throw new InvalidInputError(walk.path, 'this number cannot be read; write it with decimal digits', read?.position)
   if (!Number.isFinite(value)) throw new InvalidInputError(walk.path, 'this is no finite number', read?.position)
   return constant(value)
+}
+
+function notAFunction(name: string): string {
+  if (!functionNames.includes(name)) return `${name} is not a function; to multiply, write a * before the parenthesis`
+  return `a plant is a ratio of polynomials in s: ${name} cannot stand in it`
 }
 
 /** The name as it stands in the text. */
@@ -111,7 +119,7 @@ function symbol(walk: Walk): Rational {
   if (parameter !== undefined) return constant(parameter.value)
   if (Object.hasOwn(constants, name)) return constant(constants[name] as number)
   const call = /^\s*\(/.test(walk.text.slice(position + name.length))
-  throw new InvalidInputError(walk.path, call ? `${name} is not a parameter; to multiply, write a *` : `${name} is not among the parameters`, position)
+  throw new InvalidInputError(walk.path, call ? notAFunction(name) : `${name} is not among the parameters`, position)
 }
 
 function refuse(walk: Walk, sentence: (name: string) => string): never {

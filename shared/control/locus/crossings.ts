@@ -1,5 +1,6 @@
 import * as polynomial from '../../numerics/polynomial'
 import { roots } from '../../numerics/roots'
+import { diesOut } from '../stability'
 import { breakaways } from './breakaways'
 import type { LoopAnalysis, TransferFunction } from '../types'
 import type { FactoredLoop } from './factored-loop'
@@ -73,5 +74,5 @@ function balancedGain({ numerator, denominator }: TransferFunction): number {
 }
 
 function isStable({ numerator, denominator }: TransferFunction, gain: number): boolean {
-  return roots(polynomial.combine(1, denominator, gain, numerator)).every(root => root.re < 0)
+  return roots(polynomial.combine(1, denominator, gain, numerator)).every(diesOut)
 }

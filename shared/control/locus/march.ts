@@ -43,7 +43,7 @@ export function march(loop: ScaledLoop, start: Mover[], from: number, to: number
   let movers = start
   let k = from
   let step = 0.02
-  for (let count = 0; k < to && count < mostSteps; count++) {
+  for (let count = 0; k < to && count < mostSteps && loop.allowance.moves > 0; count++) {
     // Counted from the present gain, not as a running logarithm: close meetings leave intervals of few digits.
     const next = Math.min(k * Math.exp(step), to)
     const taken = Math.log1p((next - k) / k)
@@ -66,6 +66,7 @@ export function march(loop: ScaledLoop, start: Mover[], from: number, to: number
 
 /** One step; strain is the largest ratio of a measure to its limit, above 1 to be refused. */
 function advance(loop: ScaledLoop, movers: Mover[], k: number, du: number): { arrived: Mover[], strain: number } {
+  loop.allowance.moves -= movers.length
   let strain = 0
   const deviations: number[] = []
   const arrived = movers.map((mover): Mover => {

@@ -26,7 +26,7 @@ export function meet(scaled: ScaledLoop, loop: FactoredLoop, { movers, k }: Laun
   }))
   let edge = Math.max(node.k - before, k)
   let rest = march(scaled, movers, k, edge)
-  for (let attempt = 0; attempt < attempts && !allNear(rest, node); attempt++) {
+  for (let attempt = 0; attempt < attempts && scaled.allowance.moves > 0 && !allNear(rest, node); attempt++) {
     const closer = node.k - (node.k - edge) / 4
     if (closer >= node.k) break
     rest = march(scaled, rest, edge, closer)

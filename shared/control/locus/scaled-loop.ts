@@ -13,7 +13,15 @@ export interface ScaledLoop {
   sign: 1 | -1
   poles: Complex[]
   zeros: Complex[]
+  /** What is left of the work that one drawing may take. */
+  allowance: { moves: number }
 }
+
+/**
+ * Moves of one root over one step. Loops that mean something need a few thousand; places strewn over many decades, or all but coinciding by the
+ * dozen, could keep a server busy for seconds. When they are used up the branches go from meeting to meeting in one piece.
+ */
+const mostMoves = 30_000
 
 export function scaleLoop(loop: FactoredLoop, extent: number): ScaledLoop {
   const shrink = (places: Complex[]) => places.map(place => complex.scale(place, 1 / extent))
@@ -23,6 +31,7 @@ export function scaleLoop(loop: FactoredLoop, extent: number): ScaledLoop {
     sign: loop.gain > 0 ? 1 : -1,
     poles: shrink(loop.poles),
     zeros: shrink(loop.zeros),
+    allowance: { moves: mostMoves },
   }
 }
 

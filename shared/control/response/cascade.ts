@@ -2,7 +2,8 @@ import type { Complex } from '../../numerics/complex'
 import { applyMatrix, matrixExponential } from '../../numerics/matrix-exponential'
 import { leading, rootsAtOrigin, type Polynomial } from '../../numerics/polynomial'
 import { isImpulsive, polesAtOrigin, remainingPolynomial, type Transform } from './modal-sum'
-import { diesOut, instantsPerLength, polynomialAt, type Instant, type Trajectory } from './trajectory'
+import { diesOut } from '../stability'
+import { instantsPerLength, polynomialAt, type Instant, type Trajectory } from './trajectory'
 
 /**
  * The inverse transform by the exponential of a matrix: the poles as a chain of first- and second-order sections, driven by an impulse. Repeated

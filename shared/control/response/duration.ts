@@ -1,4 +1,5 @@
 import type { Complex } from '../../numerics/complex'
+import { diesOut } from '../stability'
 import { lastOutside, type Trajectory } from './trajectory'
 
 /** Room after the response has settled, so that the eye sees it has. */
@@ -26,7 +27,7 @@ export function chooseDuration(y: Trajectory, poles: readonly Complex[]): number
 function settlingView(y: Trajectory, poles: readonly Complex[]): number {
   const largest = largestTransient(y)
   const settled = largest > 0 ? lastOutside(y, 0.02 * largest) : 0
-  if (settled === 0) return 5 / Math.min(...poles.map(pole => Math.hypot(pole.re, pole.im)).filter(size => size > 0), 1e12)
+  if (settled === 0) return modesToSlowest(poles)
   const moved = lastOutside(y, 0.1 * largest)
   const view = roomAfterSettling * Math.min(settled, longestTail * Math.max(moved, settled / 1000))
   return Math.min(view, cyclesOfSlowestOscillation(poles))
@@ -44,8 +45,14 @@ function growthView(poles: readonly Complex[]): number {
     const growth = growthTimes / fastest.re
     return fastest.im > 0 ? Math.min(growth, mostCycles / 2 * 2 * Math.PI / Math.abs(fastest.im)) : growth
   }
-  // A lasting oscillation on the border of stability.
-  return 10 * 2 * Math.PI / Math.max(...poles.filter(pole => pole.re === 0).map(pole => pole.im))
+  const lasting = poles.filter(pole => !diesOut(pole) && pole.im > 0).map(pole => pole.im)
+  return lasting.length > 0 ? 10 * 2 * Math.PI / Math.max(...lasting) : modesToSlowest(poles)
+}
+
+/** Five times as long as the slowest root, those at the origin left out, takes for one radian or time constant. */
+function modesToSlowest(poles: readonly Complex[]): number {
+  const sizes = poles.map(pole => Math.hypot(pole.re, pole.im)).filter(size => size > 0)
+  return sizes.length > 0 ? 5 / Math.min(...sizes) : 1
 }
 
 /** To a few percent, which is enough to choose a time axis. */

@@ -1,7 +1,8 @@
 import type { Complex } from '../../numerics/complex'
 import { evaluateComplexCompensated } from '../../numerics/compensated'
 import { degree, derivative, evaluateComplex, leading, rootsAtOrigin, type Polynomial } from '../../numerics/polynomial'
-import { diesOut, instantsPerLength, polynomialAt, type Instant, type Trajectory } from './trajectory'
+import { diesOut } from '../stability'
+import { instantsPerLength, polynomialAt, type Instant, type Trajectory } from './trajectory'
 
 /** A Laplace transform N(s) / (D(s) s^integrators) of which the roots of D are known. */
 export interface Transform {

@@ -1,13 +1,4 @@
-import type { Complex } from '../../numerics/complex'
 import { findRoot } from '../../numerics/find-root'
-
-/** A root this close to the imaginary axis, against its size, lies on it as far as rounding lets it be told. */
-const onAxis = 1e-13
-
-/** Whether a mode e^(pt) dies out. */
-export function diesOut(pole: Complex): boolean {
-  return pole.re < -onAxis * Math.hypot(pole.re, pole.im)
-}
 
 /**
  * Instants of a walk at one step length. A signal that needs more (a resonance all but undamped beside something slow) is walked in longer and

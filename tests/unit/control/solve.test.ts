@@ -62,6 +62,24 @@ describe('a design', () => {
     expect(solution.response.output.every(Number.isFinite)).toBe(true)
   })
 
+  it('takes a gain that only rounding parts from 0 for 0', () => {
+    // On the locus of the one gain: s² + 3 s + 2 k at damping ratio 0.6 is reached without a derivative part.
+    const point = { re: -1.5, im: 2 }
+    expect(solveDesign(servo, { form: 'pd' }, { designPoint: point }).gains).toEqual({ kp: expect.closeTo(3.125, 12), kd: 0 })
+    expect(solveDesign(servo, { form: 'rate' }, { designPoint: point }).gains).toEqual({ kp: expect.closeTo(3.125, 12), kr: 0 })
+    expect(solveDesign(servo, { form: 'pi' }, { designPoint: point }).gains).toEqual({ kp: expect.closeTo(3.125, 12), ki: 0 })
+  })
+
+  it('looks at a lasting oscillation for ten of its cycles', () => {
+    // s³ + 3 s² + 2 s + k: at k = 6 a pair lies on the axis at sqrt(2); a little below, as near to it as rounding can tell.
+    const plant = { numerator: [1], denominator: [1, 3, 2, 0] }
+    for (const k of [6, 5.9999999999994]) {
+      const { stable, response } = solveDesign({ plant, rateFeedback: 0 }, { form: 'gain' }, { gains: { k } })
+      expect(stable).toBe(false)
+      expect(response.time.at(-1)).toBe(50)
+    }
+  })
+
   it('counts what is not met', () => {
     const requirements = [
       { reading: 'overshootPercent', limit: 'at-most', value: 1 }, { reading: 'settlingTime', limit: 'at-most', value: 60 },

@@ -18,8 +18,8 @@ describe('flags', () => {
     expect(cloth).toEqual({ x: 200, y: 14 })
   })
 
-  it('never cover one another', () => {
-    const flags = [[-1, 1], [-1, 1], [-1.1, 1], [-1, 1.1], [2, 0]].map(([re = 0, im = 0]) => ({ point: { re, im } }))
+  it('never cover one another, and are left out where they are out of view', () => {
+    const flags = [[-1, 1], [-1, 1], [-1.1, 1], [-1, 1.1], [2, 0], [-1, 1e20], [-1, 1e20], [5, 0]].map(([re = 0, im = 0]) => ({ point: { re, im } }))
     const placed = placeFlags(flags, viewport, elsewhere)
     expect(placed.map(({ cloth }) => cloth.y)).toEqual([60, 37, 14, expect.closeTo(-19, 9), 160])
     placed.forEach((a, index) => {

@@ -37,6 +37,7 @@ describe('a loop of a request', () => {
     ['a formula that is zero', { form: 'expression', expression: '0/s', parameters: {} }, 'loop.plant.expression'],
     ['a formula beyond order 20', { form: 'expression', expression: '1/(s+1)^21', parameters: {} }, 'loop.plant.expression'],
     ['a missing conjugate', { form: 'zeros-poles-gain', zeros: [], poles: [{ re: 0, im: 0 }, { re: -1, im: 2 }], gain: 1 }, 'loop.plant.poles.1'],
+    ['poles beyond range', { form: 'zeros-poles-gain', zeros: [], poles: [{ re: -1e200, im: 0 }, { re: -1e200, im: 0 }], gain: 1 }, 'loop.plant.poles'],
     ['a zero gain', { form: 'zeros-poles-gain', zeros: [], poles: [{ re: 0, im: 0 }], gain: 0 }, 'loop.plant.gain'],
     ['more zeros than poles', { form: 'zeros-poles-gain', zeros: [{ re: -1, im: 0 }], poles: [], gain: 1 }, 'loop.plant.zeros'],
   ])('refuses %s and names the field', (_what, wrong, path) => {

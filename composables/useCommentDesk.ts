@@ -12,9 +12,7 @@ export function useCommentDesk(options: { address: string, mayComment: boolean, 
   /** Counts the places pointed out on the bench, each of which asks for the text of a comment. */
   const pointedOut = ref(0)
 
-  const flags = computed(() => threads.value
-    .filter(({ root }) => !root.resolved)
-    .flatMap(({ number, root: { id, anchor: place } }) => place?.kind === 'plane' ? [{ id, number, point: { re: place.re, im: place.im } }] : []))
+  const pins = computed(() => pinsOf(threads.value, selected.value))
 
   function select(id: string | null) {
     selected.value = id
@@ -53,5 +51,5 @@ export function useCommentDesk(options: { address: string, mayComment: boolean, 
   }
 
   const { mayComment, mayResolve, asksName } = options
-  return reactive({ threads, flags, error, selected, anchor, pointedOut, news, mayComment, mayResolve, asksName, post, setResolved, hear, refresh, pin, select, point })
+  return reactive({ threads, pins, error, selected, anchor, pointedOut, news, mayComment, mayResolve, asksName, post, setResolved, hear, refresh, pin, select, point })
 }

@@ -35,12 +35,18 @@ export function useResponsePicture(options: {
     const final = isStep && stable ? readings.finalValue : null
     const limits = isStep && final !== null ? stepLimits(toValue(options.requirements), final) : null
     const estimate = final !== null ? estimateCurve(solution, final) : null
-    const reference = response.input === 'reference-ramp' ? response.time : null
+    const reference = referenceOf(response.input, response.time)
     const always = [0, ...(final === null ? [] : [final]), ...(limits?.overshoot ? [limits.overshoot.ceiling] : [])]
     outputRange = calmRange(outputRange, extentOf([response.output, estimate ?? [], reference ?? []], always))
     effortRange = calmRange(effortRange, extentOf([response.effort], [0]))
     return { ...panels(width, height, response.time, outputRange, effortRange), response, readings, stable, final, limits, estimate, reference, isStep }
   })
+}
+
+/** What the output should follow; a load disturbance asks for nothing. */
+function referenceOf(input: DesignSolution['response']['input'], time: readonly number[]): readonly number[] | null {
+  if (input === 'disturbance-step') return null
+  return input === 'reference-ramp' ? time : time.map(() => 1)
 }
 
 function panels(width: number, height: number, time: readonly number[], outputRange: Range, effortRange: Range) {

@@ -1,10 +1,22 @@
-import type { Comment } from '#shared/schemas/comment'
+import type { Anchor, Comment } from '#shared/schemas/comment'
 
 /** A comment that stands by itself, with its number on the sheet and the answers to it, oldest first. */
 export interface Thread {
   number: number
   root: Comment
   replies: Comment[]
+}
+
+/** An unresolved comment at the place on the bench that it is about. */
+export interface Pin {
+  id: string
+  number: number
+  anchor: Anchor
+  selected: boolean
+}
+
+export function pinsOf(threads: readonly Thread[], selected: string | null): Pin[] {
+  return threads.flatMap(({ number, root: { id, anchor, resolved } }) => anchor && !resolved ? [{ id, number, anchor, selected: id === selected }] : [])
 }
 
 /**

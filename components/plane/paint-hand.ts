@@ -128,6 +128,10 @@ function paintPoint(context: Context, { viewport, colors, point, onLocus }: Hand
 function paintFlags(context: Context, { colors, flags }: HandScene): void {
   for (const { flag, foot, cloth } of flags) {
     strokeLines(context, [[foot, cloth]], paint(colors.ink), 1.4)
+    if (flag.selected) {
+      context.fillStyle = paint(colors.brass)
+      context.fillRect(cloth.x - 3, cloth.y - 3, flagSize.width + 6, flagSize.height + 6)
+    }
     context.fillStyle = paint(colors.ink)
     context.fillRect(cloth.x, cloth.y, flagSize.width, flagSize.height)
     context.font = font(12, 700)

@@ -1,5 +1,5 @@
 import type { Context } from 'konva/lib/Context'
-import { arrowHeads, visibleBranches, type ArrowHead } from '~/utils/plane/locus'
+import { arrowHeads, drawnBranches, visibleBranches, type ArrowHead } from '~/utils/plane/locus'
 import { gatherMarks, type Mark } from '~/utils/plane/marks'
 import { isInView, toScreen } from '~/utils/plane/viewport'
 import { paint } from '~/utils/plane/colors'
@@ -13,7 +13,7 @@ export function paintLocus(context: Context, scene: LocusScene): void {
   const { viewport, colors, analysis } = scene
   if (!analysis) return
   const frame = { left: -8, top: -8, right: viewport.width + 8, bottom: viewport.height + 8 }
-  const runs = visibleBranches(analysis.branches, viewport, frame)
+  const runs = visibleBranches(drawnBranches(analysis), viewport, frame)
   context.beginPath()
   for (const run of runs) tracePolyline(context, run)
   context.strokeStyle = paint(colors.slate)

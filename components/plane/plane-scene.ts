@@ -32,7 +32,7 @@ export interface HandScene {
   leftoverDeg: number | null
   /** The figures wait for the server. */
   stale: boolean
-  flags: FlagPlace<{ number: number }>[]
+  flags: FlagPlace<{ number: number, selected: boolean }>[]
   /** The place on the locus under the pointer, and its gain in words. */
   hover: { point: Complex, label: string } | null
   turning: boolean

@@ -20,7 +20,7 @@ interface Hand {
   drawn: Readonly<ShallowRef<Complex>>
   live: Readonly<ShallowRef<Complex>>
   meetings: ComputedRef<Complex[]>
-  flags: ComputedRef<FlagPlace<{ number: number }>[]>
+  flags: ComputedRef<FlagPlace<{ number: number, selected: boolean }>[]>
   hover: ComputedRef<HandScene['hover']>
   turning: () => boolean
 }

@@ -22,6 +22,9 @@ function validate<S extends z.ZodType>(input: unknown, schema: S): z.output<S> {
   return result.data
 }
 
+/** A body that trickles in for longer than this holds a connection for nothing. */
+const mostSeconds = 20
+
 /**
  * The body as text. Declared or streamed, no more than `most` bytes are ever kept; what comes after them is read and dropped, so that
  * the answer still reaches whoever sends it.
@@ -32,6 +35,8 @@ async function readCapped(event: H3Event, most: number): Promise<string> {
   const chunks: Buffer[] = []
   let size = 0
   const request = event.node.req
+  const late = setTimeout(() => request.destroy(), mostSeconds * 1000)
+  request.once('close', () => clearTimeout(late))
   for await (const chunk of request.iterator({ destroyOnReturn: false }) as AsyncIterable<Buffer>) {
     size += chunk.length
     if (size > most) {
@@ -40,6 +45,7 @@ async function readCapped(event: H3Event, most: number): Promise<string> {
     }
     chunks.push(chunk)
   }
+  clearTimeout(late)
   return Buffer.concat(chunks).toString('utf8')
 }
 

@@ -7,12 +7,12 @@ const unlimited: readonly ReadingName[] = ['gainMarginDb', 'phaseMarginDeg', 'de
 
 /** Readings that mean something in a stable loop only: a margin tells how far stability is, not whether it is there. */
 const ofStableLoops: readonly ReadingName[] = [...unlimited, 'sensitivityPeak']
-/** Signed readings whose limits mean their size. */
-const limitedInSize: readonly ReadingName[] = ['steadyStateErrorStep', 'steadyStateErrorRamp']
+/** Signed readings whose limits mean their size: an error either way, a gain margin upward or downward. */
+const limitedInSize: readonly ReadingName[] = ['steadyStateErrorStep', 'steadyStateErrorRamp', 'gainMarginDb']
 
 /**
  * Each requirement with the figure found and whether it is met (limits included). No margin, bandwidth or sensitivity peak of an unstable loop meets
- * anything; a limit on a steady-state error holds for its size, whichever its sign.
+ * anything; a limit on a steady-state error or a gain margin holds for its size, whichever its sign.
  *
  * A figure that does not exist (null) meets nothing, with one exception: a stable loop whose margin or bandwidth has no limit at all meets
  * every "at least". The reading `dampingRatio` is that of the least damped closed-loop pole, whichever it is: a well-placed design pair does

@@ -1,4 +1,4 @@
-import type { DesignSolution, ReadingName, Readings, Requirement } from '#shared/control/types'
+import type { DesignSolution, ReadingName, Requirement } from '#shared/control/types'
 import { formatFigure, formatFixed, formatPlain, gap } from './format'
 
 export interface ReadingDescription {
@@ -8,6 +8,8 @@ export interface ReadingDescription {
   /** Decimals for figures of a natural size, else significant digits. */
   decimals?: number
   digits?: number
+  /** What it means in a stable loop that there is no figure. */
+  none?: string
   /** The sense in which limits of this reading are usually set. */
   usualLimit: Requirement['limit']
   /** A limit that a new requirement begins with. */
@@ -21,25 +23,28 @@ export const readingDescriptions: readonly ReadingDescription[] = [
   { name: 'settlingTime', label: 'Settling time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'settlingTime' },
   { name: 'riseTime', label: 'Rise time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'riseTime' },
   { name: 'peakTime', label: 'Peak time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'peakTime' },
-  { name: 'phaseMarginDeg', label: 'Phase margin', unit: '°', decimals: 1, usualLimit: 'at-least', usualValue: 50 },
-  { name: 'gainMarginDb', label: 'Gain margin', unit: 'dB', decimals: 1, usualLimit: 'at-least', usualValue: 8 },
-  { name: 'delayMargin', label: 'Delay margin', unit: 's', digits: 3, usualLimit: 'at-least', usualValue: 0.01 },
+  { name: 'phaseMarginDeg', label: 'Phase margin', unit: '°', decimals: 1, none: 'no limit', usualLimit: 'at-least', usualValue: 50 },
+  { name: 'gainMarginDb', label: 'Gain margin', unit: 'dB', decimals: 1, none: 'no limit', usualLimit: 'at-least', usualValue: 8 },
+  { name: 'delayMargin', label: 'Delay margin', unit: 's', digits: 3, none: 'no limit', usualLimit: 'at-least', usualValue: 0.01 },
   { name: 'sensitivityPeak', label: 'Sensitivity peak', unit: '', digits: 3, usualLimit: 'at-most', usualValue: 1.6 },
-  { name: 'bandwidth', label: 'Bandwidth', unit: 'rad/s', digits: 3, usualLimit: 'at-least', usualValue: 1 },
+  { name: 'bandwidth', label: 'Bandwidth', unit: 'rad/s', digits: 3, none: 'no limit', usualLimit: 'at-least', usualValue: 1 },
   { name: 'steadyStateErrorStep', label: 'Step error', unit: '', digits: 3, usualLimit: 'at-most', usualValue: 0.05 },
-  { name: 'steadyStateErrorRamp', label: 'Ramp error', unit: 's', digits: 3, usualLimit: 'at-most', usualValue: 1 },
-  { name: 'peakEffort', label: 'Peak effort', unit: '', digits: 4, usualLimit: 'at-most', usualValue: 10 },
-  { name: 'dampingRatio', label: 'Damping ratio', unit: '', digits: 3, usualLimit: 'at-least', usualValue: 0.5 },
+  { name: 'steadyStateErrorRamp', label: 'Ramp error', unit: 's', digits: 3, none: 'grows', usualLimit: 'at-most', usualValue: 1 },
+  { name: 'peakEffort', label: 'Peak effort', unit: '', digits: 4, none: 'impulse', usualLimit: 'at-most', usualValue: 10 },
+  { name: 'dampingRatio', label: 'Least damping', unit: '', digits: 3, usualLimit: 'at-least', usualValue: 0.5 },
 ]
 
 export function describeReading(name: ReadingName): ReadingDescription {
   return readingDescriptions.find(description => description.name === name)!
 }
 
-/** A reading with its unit; a dash where the figure does not exist. */
-export function formatReading({ unit, decimals, digits }: ReadingDescription, value: number | null): string {
-  if (value === null) return '–'
-  return withUnit(decimals === undefined ? formatFigure(value, digits) : formatFixed(value, decimals), unit)
+/** A reading with its unit; where there is no figure, what that means, or a dash. */
+export function formatReading({ name, unit, decimals, digits, none }: ReadingDescription, value: number | null, stable: boolean): string {
+  if (value === null) return stable && none !== undefined ? none : '–'
+  // In a stable loop a margin below 0 dB is one on the other side: how far the gain may fall.
+  const size = name === 'gainMarginDb' && stable ? Math.abs(value) : value
+  const figure = withUnit(decimals === undefined ? formatFigure(size, digits) : formatFixed(size, decimals), unit)
+  return size === value ? figure : `${figure} down`
 }
 
 /** A limit in short: at most 12 % becomes ≤ 12 %. */
@@ -57,7 +62,11 @@ function withUnit(figure: string, unit: string): string {
   return unit === '°' ? `${figure}°` : `${figure}${gap}${unit}`
 }
 
-/** The damping ratio is a reading only by its verdict: it is that of the least damped root. */
-export function readingValue(name: ReadingName, readings: Readings): number | null | undefined {
-  return name === 'dampingRatio' ? undefined : readings[name]
+/**
+ * The damping ratio is a reading only by its verdict: it is that of the least damped root. An unstable loop has no delay that it could bear; the
+ * figure of the contract tells by how much it misses one.
+ */
+export function readingValue(name: ReadingName, { readings, stable }: Pick<DesignSolution, 'readings' | 'stable'>): number | null | undefined {
+  if (name === 'dampingRatio') return undefined
+  return name === 'delayMargin' && !stable ? null : readings[name]
 }

@@ -47,6 +47,25 @@ function between(from: number, to: number, t: number): number {
   return from > 0 && to > 0 ? from * (to / from) ** t : from + t * (to - from)
 }
 
+/** How far a branch is drawn on beyond its last node, as a multiple of the distance from the origin. */
+const beyond = 1000
+/** A branch that ends this many times further out than the farthest pole or zero has no zero to come to. */
+const outside = 4
+
+/** The branches as they are drawn: those that come to no zero run on along their asymptotes for as far as anybody pans. */
+export function drawnBranches({ branches, openLoop }: Pick<LoopAnalysis, 'branches' | 'openLoop'>): Branch[] {
+  const extent = Math.max(0, ...[...openLoop.poles, ...openLoop.zeros].map(({ re, im }) => Math.hypot(re, im)))
+  return branches.map((branch) => {
+    const [from, last] = branch.points.slice(-2)
+    if (!from || !last) return branch
+    const size = Math.hypot(last[0], last[1])
+    if (size <= outside * extent) return branch
+    const [x, y] = [last[0] - from[0], last[1] - from[1]]
+    const reach = beyond * size / Math.hypot(x, y)
+    return Number.isFinite(reach) ? { points: [...branch.points, [last[0] + x * reach, last[1] + y * reach, last[2]]] } : branch
+  })
+}
+
 /** The visible runs of every branch, as screen polylines. */
 export function visibleBranches(branches: readonly Branch[], viewport: Viewport, frame: Rect): ScreenPoint[][] {
   return branches.flatMap(({ points }) =>

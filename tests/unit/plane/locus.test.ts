@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { arrowHeads, hoverLocus, visibleBranches } from '~/utils/plane/locus'
+import { arrowHeads, drawnBranches, hoverLocus, visibleBranches } from '~/utils/plane/locus'
+import type { LoopAnalysis } from '#shared/control/types'
 import type { Viewport } from '~/utils/plane/viewport'
 
 /** 100 px per rad/s, origin at (300, 200). */
@@ -29,6 +30,20 @@ describe('hovering the locus', () => {
 })
 
 describe('drawing the locus', () => {
+  it('runs on along the asymptotes, and ends where a zero is', () => {
+    const places = (...list: number[]) => list.map(re => ({ re, im: 0 }))
+    const openLoop = { poles: places(-1, -2, 0), zeros: places(-3, 0) } as LoopAnalysis['openLoop']
+    const outward = { points: [[-1, 0, 0], [-1, 8, 1], [-1, 16, 2]] as [number, number, number][] }
+    const toZero = { points: [[-2, 0, 0], [-2.9, 0, 50], [-2.9999, 0, 1e4]] as [number, number, number][] }
+    const toOrigin = { points: [[-1, 0, 0], [-1e-4, 0, 1e4]] as [number, number, number][] }
+    const hidden = { points: [[0, 0, 0], [0, 0, 1e4]] as [number, number, number][] }
+    const [first, ...others] = drawnBranches({ branches: [outward, toZero, toOrigin, hidden], openLoop })
+    expect(first!.points.slice(0, 3)).toEqual(outward.points)
+    expect(first!.points[3]![0]).toBe(-1)
+    expect(first!.points[3]![1]).toBeGreaterThan(10_000)
+    expect(others).toEqual([toZero, toOrigin, hidden])
+  })
+
   it('cuts branches at the frame', () => {
     const far = { points: [[0, 0, 0], [-1000, 0, 5]] as [number, number, number][] }
     expect(visibleBranches([far], viewport, { left: 0, top: 0, right: 600, bottom: 400 })).toEqual([[{ x: 300, y: 200 }, { x: 0, y: 200 }]])

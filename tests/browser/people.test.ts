@@ -96,8 +96,15 @@ describe('comments', () => {
     await writeComment(guest.page, { body: 'Is this with the trolley out?', name: 'Ilse Brandt' })
     await expect.poll(() => commentsOf(runa.page).count()).toBe(1)
     expect(await commentsOf(runa.page).first().innerText()).toMatch(/on overshoot/i)
+    await runa.page.locator('[data-test="row-overshoot"] [data-test="pin-1"]').click()
+    await expect.poll(() => runa.page.evaluate(() => document.activeElement?.textContent ?? '')).toContain('Is this with the trolley out?')
 
     await writeComment(guest.page, { body: 'And here?', about: 'the design point where it stands' })
+    await guest.page.locator('[data-test="response"]').click({ position: { x: 300, y: 60 } })
+    await writeComment(guest.page, { body: 'It passes here first.' })
+    await runa.page.getByRole('region', { name: 'Response' }).locator('[data-test="pin-3"]').click()
+    await expect.poll(() => runa.page.evaluate(() => document.activeElement?.textContent ?? '')).toContain('It passes here first.')
+
     const flag = runa.page.getByRole('button', { name: /^Comment 2 at/ })
     await flag.click()
     await expect.poll(() => runa.page.evaluate(() => document.activeElement?.textContent ?? '')).toContain('And here?')

@@ -99,3 +99,26 @@ describe.each([
     await someone.leave()
   })
 })
+
+describe('the bench with limits broken', () => {
+  it('fits every width from a phone to a wall, its tables too', async () => {
+    const { page, leave } = await visitor(browser, server.origin)
+    await register(page, newAccount('Runa Holt'))
+    const bench = await new BenchPage(page).open('/')
+    const dialog = await nameScenario(page, { title: 'A title so long that it says what is carried, by which crane, and in what weather, all at once' })
+    await dialog.getByRole('button', { name: 'Save', exact: true }).click()
+    await page.waitForURL('**/scenarios/*')
+    await bench.ready()
+    await bench.placePoint(0.2, 2.2)
+    await page.locator('[data-test="row-overshoot"]').getByText('not met').waitFor()
+    const tooWide: object[] = []
+    for (const width of [390, 600, 720, 768, 959, 1024, 1120, 1280, 1440, 2560]) {
+      await page.setViewportSize({ width, height: 900 })
+      const rooms = await page.evaluate(() => [document.documentElement, ...document.querySelectorAll('.zone-readings, .roots, .loop-sheet, header')]
+        .filter(room => room.scrollWidth > room.clientWidth + 1).map(room => room.className || room.tagName))
+      if (rooms.length > 0) tooWide.push({ width, rooms })
+    }
+    expect(tooWide).toEqual([])
+    await leave()
+  })
+})

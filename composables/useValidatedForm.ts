@@ -2,7 +2,8 @@ import type { z } from 'zod'
 
 /**
  * A form that validates as the server does: the same schema, loaded at the first submit so that no page carries it up front.
- * What was typed stays on every failure; each message stands at its field, the rest in `failure`.
+ * What was typed stays on every failure; each message stands at its field, the rest in `failure`. The first field with an error gets the focus,
+ * so that it is also heard.
  */
 export function useValidatedForm<S extends z.ZodType>(options: {
   initial: () => z.input<S> & object
@@ -27,22 +28,32 @@ export function useValidatedForm<S extends z.ZodType>(options: {
     failure.value = Object.keys(errors.value).length > 0 ? null : failed.message
   }
 
-  async function submit(): Promise<boolean> {
+  async function focusFirstError(form: HTMLFormElement) {
+    await nextTick()
+    form.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus()
+  }
+
+  /** Answers whether it was sent and accepted. The event is that of the form. */
+  async function submit(event: Event): Promise<boolean> {
     if (busy.value) return false
+    const form = event.target as HTMLFormElement
     busy.value = true
     errors.value = {}
     failure.value = null
+    let accepted = false
     try {
       const body = await check()
-      if (body === null) return false
-      await options.submit(body)
-      return true
+      if (body !== null) {
+        await options.submit(body)
+        accepted = true
+      }
     } catch (thrown) {
       showFailure(thrown)
-      return false
     } finally {
       busy.value = false
     }
+    if (!accepted) await focusFirstError(form)
+    return accepted
   }
 
   function reset() {

@@ -4,9 +4,10 @@ export interface Toast {
   action?: { label: string, run: () => void | Promise<void> }
 }
 
-const staysMs = 10_000
+/** Counted on, never used again: who shows a message may dismiss it late. */
+let lastId = 0
 
-/** Short messages that go by themselves, each with one action at most (say, Undo). */
+/** Short messages that go by themselves (see `ToastNote`), each with one action at most (say, Undo). */
 export function useToasts() {
   const toasts = useState<Toast[]>('toasts', () => [])
 
@@ -14,10 +15,12 @@ export function useToasts() {
     toasts.value = toasts.value.filter(toast => toast.id !== id)
   }
 
-  function show(message: string, action?: Toast['action']) {
-    const id = Math.max(0, ...toasts.value.map(toast => toast.id)) + 1
+  /** Returns the id to dismiss it by. */
+  function show(message: string, action?: Toast['action']): number {
+    lastId += 1
+    const id = lastId
     toasts.value = [...toasts.value, { id, message, action }]
-    setTimeout(() => dismiss(id), staysMs)
+    return id
   }
 
   return { toasts, show, dismiss }

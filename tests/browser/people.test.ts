@@ -1,8 +1,9 @@
 import type { Browser } from 'playwright-core'
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest'
+import { slewDocument } from '../fixtures/document'
 import { BenchPage } from '../helpers/bench-page'
 import { openBrowser, phone, visitor, type Visitor } from '../helpers/browser'
-import { commentsOf, nameScenario, newAccount, register, registerHere, saveState, shareLink, signIn, writeComment } from '../helpers/people-pages'
+import { commentsOf, focused, nameScenario, newAccount, register, registerHere, saveState, shareLink, signIn, signInHere, signOut, writeComment } from '../helpers/people-pages'
 import { startServer, type RunningServer } from '../helpers/server'
 
 let server: RunningServer
@@ -86,7 +87,136 @@ describe('from the first drag to a colleague who answers', () => {
   })
 })
 
+describe('a person with an account, signed out', () => {
+  it('drags, signs in to save, by way of the register page too, and finds the scenario', async () => {
+    const account = newAccount('Runa Holt')
+    const { page } = await arrive()
+    await register(page, account)
+    await signOut(page)
+    const bench = await new BenchPage(page).open('/')
+    await bench.dragPointBy(-50, -70)
+    await bench.placePoint(0.62, 1.1)
+    const gain = await bench.awaitFigure('gain', value => expect(value).toBeGreaterThan(0))
+
+    const dialog = await nameScenario(page, { title: 'Slew with spreader' })
+    await dialog.getByRole('button', { name: 'Sign in and save' }).click()
+    await page.waitForURL('**/sign-in')
+    await page.getByText('“Slew with spreader” is kept').waitFor()
+    await page.getByRole('link', { name: 'Create one' }).click()
+    await page.waitForURL('**/register')
+    await page.getByText('“Slew with spreader” is kept').waitFor()
+    await page.getByRole('main').getByRole('link', { name: 'Sign in' }).click()
+    await page.waitForURL('**/sign-in')
+    await signInHere(page, account)
+    await page.waitForURL('**/scenarios/*')
+    await page.goto('/scenarios')
+    await page.getByRole('link', { name: 'Slew with spreader' }).click()
+    await bench.ready()
+    await bench.awaitFigure('gain', value => expect(value).toBe(gain))
+  })
+})
+
+describe('a dialog', () => {
+  it('begins at its first field or its main action, leads to what is wrong, and comes to closing last', async () => {
+    const { page } = await owner()
+    await page.goto('/')
+    await new BenchPage(page).ready()
+    await page.getByRole('button', { name: 'Save', exact: true }).click()
+    await expect.poll(() => focused(page)).toBe('Title')
+    await page.keyboard.press('Delete')
+    await page.keyboard.press('Tab')
+    await page.keyboard.press('Enter')
+    await page.getByText('give the scenario a title').waitFor()
+    await expect.poll(() => focused(page)).toBe('Title')
+    for (const stop of ['Machine', 'Axis', 'Save']) {
+      await page.keyboard.press('Tab')
+      expect(await focused(page)).toBe(stop)
+    }
+    await page.keyboard.press('Tab')
+    expect(await page.evaluate(() => document.activeElement?.getAttribute('aria-label'))).toBe('Close')
+    await page.keyboard.press('Enter')
+
+    await page.goto('/scenarios')
+    await page.getByRole('button', { name: /^Rename/ }).click()
+    await expect.poll(() => focused(page)).toBe('Title')
+    await page.keyboard.type('Heavier still')
+    await page.keyboard.press('Enter')
+    await page.getByRole('link', { name: 'Heavier still' }).click()
+    await new BenchPage(page).ready()
+    await page.getByRole('button', { name: 'Share', exact: true }).click()
+    await expect.poll(() => focused(page)).toBe('look, try a what-if and comment')
+  })
+})
+
+describe('a message that goes by itself', () => {
+  it('stays for as long as it is pointed at or holds the focus', async () => {
+    const { page } = await arrive()
+    await register(page, newAccount('Runa Holt'))
+    await page.request.post('/api/scenarios', { headers: { origin: server.origin }, data: { title: 'Heavier hook block', machine: '', axis: '', document: slewDocument } })
+    await page.clock.install()
+    await page.goto('/scenarios')
+    await page.getByRole('button', { name: 'Delete Heavier hook block' }).click()
+    const message = page.locator('[data-test="toast"]')
+    await message.hover()
+    await page.clock.fastForward(30_000)
+    expect(await message.count()).toBe(1)
+    await message.getByRole('button', { name: 'Undo' }).focus()
+    await page.mouse.move(0, 0)
+    await page.clock.fastForward(30_000)
+    expect(await message.count()).toBe(1)
+    await page.getByRole('searchbox').focus()
+    await page.clock.fastForward(11_000)
+    expect(await message.count()).toBe(1)
+    await page.clock.fastForward(1_100)
+    await message.waitFor({ state: 'detached' })
+  })
+})
+
+describe('the title in the bar', () => {
+  it('leaves the focus where the person goes, and a long one leaves the row as it is', async () => {
+    const { page } = await owner()
+    const bar = page.locator('.bench-bar')
+    const height = async () => (await bar.boundingBox())!.height
+    const before = await height()
+    const title = page.locator('[data-test="title"]')
+    await title.click()
+    const long = 'Slew axis with the heavier hook block and the long boom, brakes released, wind from the side, second visit'
+    await page.keyboard.type(long)
+    await page.locator('[data-test="zeta"]').click()
+    await title.waitFor()
+    expect(await page.evaluate(() => document.activeElement?.getAttribute('data-test'))).toBe('zeta')
+    expect(await title.getAttribute('title')).toContain(long)
+    expect(await height()).toBe(before)
+    await title.click()
+    await page.keyboard.press('Enter')
+    await expect.poll(() => focused(page)).toBe(long)
+  })
+})
+
 describe('comments', () => {
+  it('are told to whoever works elsewhere on the page, not to their author', async () => {
+    const runa = await owner()
+    const link = await shareLink(runa.page, 'comment')
+    const guest = await arrive()
+    await new BenchPage(guest.page).open(link)
+    await writeComment(guest.page, { body: 'Is this with the trolley out?', name: 'Ilse Brandt' })
+    const told = runa.page.locator('[data-test="toast"]')
+    await told.getByText('Ilse Brandt commented.').waitFor()
+    await told.getByRole('button', { name: 'Show' }).click()
+    await expect.poll(() => focused(runa.page)).toContain('Is this with the trolley out?')
+    await told.waitFor({ state: 'detached' })
+
+    await commentsOf(runa.page).getByRole('button', { name: 'Reply' }).click()
+    const reply = runa.page.getByRole('form', { name: 'Reply' })
+    await reply.getByLabel('Reply').fill('It is.')
+    await reply.getByRole('button', { name: 'Send the reply' }).click()
+    const answered = guest.page.locator('[data-test="toast"]')
+    await answered.getByText('Runa Holt replied.').waitFor()
+    await answered.getByRole('button', { name: 'Show' }).click()
+    await expect.poll(() => focused(guest.page)).toContain('It is.')
+    expect(await told.count() + await answered.count()).toBe(0)
+  })
+
   it('are pinned, answered, resolved and folded, and a flag and its comment lead to each other', async () => {
     const runa = await owner()
     const link = await shareLink(runa.page, 'comment')
@@ -173,9 +303,7 @@ describe('the account forms', () => {
     await registerHere(page, account)
     await page.waitForURL('**/scenarios')
     await page.getByText('Your scenarios will stand here').waitFor()
-    await page.locator('[data-test="account"]').click()
-    await page.getByRole('button', { name: 'Sign out' }).click()
-    await page.waitForURL('**/sign-in')
+    await signOut(page)
 
     someone.expectFailure(401, /\/api\/auth\/sign-in/)
     someone.expectFailure(400, /\/api\/auth\/register/)
@@ -197,15 +325,11 @@ describe('the account forms', () => {
     const account = newAccount('Runa Holt')
     const { page } = await arrive()
     await register(page, account)
-    await page.locator('[data-test="account"]').click()
-    await page.getByRole('button', { name: 'Sign out' }).click()
-    await page.waitForURL('**/sign-in')
+    await signOut(page)
     await page.goto('/scenarios')
     await page.waitForURL('**/sign-in?to=/scenarios')
     await page.goto(`/sign-in?to=${encodeURIComponent('https://example.org/')}`)
-    await page.getByLabel('E-mail').fill(account.email)
-    await page.getByLabel('Password').fill(account.password)
-    await page.getByRole('button', { name: 'Sign in' }).click()
+    await signInHere(page, account)
     await page.waitForURL(`${server.origin}/scenarios`)
     visitors.at(-1)!.expectFailure(404, /\/scenarios\//)
     expect((await page.goto(address))!.status()).toBe(404)

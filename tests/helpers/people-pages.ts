@@ -24,11 +24,22 @@ export async function register(page: Page, account: Account) {
   await page.waitForURL('**/scenarios')
 }
 
-export async function signIn(page: Page, account: Account) {
-  await page.goto('/sign-in')
+/** Fills in the form of the sign-in page, which is open, and sends it. */
+export async function signInHere(page: Page, account: Account) {
   await page.getByLabel('E-mail').fill(account.email)
   await page.getByLabel('Password').fill(account.password)
   await page.getByRole('button', { name: 'Sign in' }).click()
+}
+
+export async function signIn(page: Page, account: Account) {
+  await page.goto('/sign-in')
+  await signInHere(page, account)
+}
+
+export async function signOut(page: Page) {
+  await page.locator('[data-test="account"]').click()
+  await page.getByRole('button', { name: 'Sign out' }).click()
+  await page.waitForURL('**/sign-in')
 }
 
 /** Opens the save dialog of the bench and gives the scenario its names. */
@@ -68,5 +79,11 @@ export async function writeComment(page: Page, comment: { body: string, name?: s
   if (comment.name !== undefined) await form.getByLabel('Your name').fill(comment.name)
   await form.getByRole('button', { name: 'Send the comment' }).click()
 }
+
+/** What a screen reader would be reading out: the name of the element with the focus. */
+export const focused = (page: Page) => page.evaluate(() => {
+  const element = document.activeElement as HTMLInputElement | null
+  return element?.labels?.[0]?.textContent?.trim() ?? element?.textContent?.trim() ?? ''
+})
 
 export const commentsOf = (page: Page) => page.locator('[data-test="comment"]')

@@ -43,7 +43,7 @@ export default defineNuxtConfig({
     public: { siteUrl: '' },
   },
   hooks: {
-    // Before Nuxt's own error page: failures under /api answer in the form of the contract.
+    // Before Nuxt's own error page: failures under /api answer in the form of docs/http-contract.md.
     'nitro:init': (nitro) => {
       nitro.options.errorHandler = [apiErrorHandler, ...[nitro.options.errorHandler].flat()]
       const routes = () => nitro.scannedHandlers.filter(({ route }) => route?.startsWith('/api/')).map(({ route, method }) => ({ route, method }))

@@ -2,7 +2,7 @@ import { send, setResponseHeader, setResponseStatus } from 'h3'
 import { defineNitroErrorHandler } from 'nitropack/runtime'
 import { errorBody, toFailure } from './utils/errors'
 
-/** Failures under /api answer in the form of the contract; pages go on to Nuxt's own handler. */
+/** Failures under /api answer in the form of docs/http-contract.md; pages go on to Nuxt's own handler. */
 export default defineNitroErrorHandler((error, event) => {
   if (!/^\/api([/?]|$)/.test(event.path) || event.handled) return
   const failed = toFailure(error.unhandled ? error.cause ?? error : error)

@@ -1,6 +1,6 @@
 import type { ErrorBody, Issue } from '#shared/schemas/errors'
 
-/** What a failed request means to the page: the contract's sentence, its issues, and whether trying again can help. */
+/** What a failed request means to the page: the sentence and the issues of docs/http-contract.md, and whether trying again can help. */
 export interface ApiFailure {
   /** HTTP status; null when no answer came at all. */
   status: number | null

@@ -6,7 +6,7 @@ const passing = [408, 429]
 
 /**
  * Posts JSON and returns the JSON answer.
- * @throws RefusedError with the contract's error body where the question is at fault; any other error where the server is gone, slow or broken
+ * @throws RefusedError with the error body of docs/http-contract.md where the question is at fault; any other error where the server is gone, slow or broken
  */
 export async function askServer<Answer>(path: string, body: unknown, signal?: AbortSignal): Promise<Answer> {
   const response = await fetch(path, { method: 'POST', headers: { 'content-type': 'application/json' }, body: JSON.stringify(body), signal })

@@ -1,5 +1,5 @@
 /**
- * One request to our own interface. `Answer` is what the contract promises of this address. Retrying is left to whoever calls.
+ * One request to our own interface. `Answer` is what docs/http-contract.md promises of this address. Retrying is left to whoever calls.
  * @throws what `readFailure` reads
  */
 export function callApi<Answer = void>(path: string, options: { method?: 'GET' | 'POST' | 'PATCH' | 'DELETE', body?: object } = {}): Promise<Answer> {

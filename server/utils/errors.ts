@@ -7,7 +7,7 @@ const reasons: Record<number, string> = {
   413: 'Content Too Large', 415: 'Unsupported Media Type', 422: 'Unprocessable Content', 429: 'Too Many Requests', 500: 'Internal Server Error',
 }
 
-/** An HTTP failure of the contract: a status, one plain sentence, and what the client needs to go on. */
+/** An HTTP failure as docs/http-contract.md has it: a status, one plain sentence, and what the client needs to go on. */
 export function failure(statusCode: number, message: string, data?: ErrorBody['data']): H3Error {
   return createError({ statusCode, statusMessage: reasons[statusCode], message, data })
 }

@@ -12,7 +12,7 @@ export interface LoopModel {
   rateFeedback: number
 }
 
-/** The controller forms; the meaning of each field is fixed by the HTTP contract. */
+/** The controller forms; the meaning of each field is fixed by docs/http-contract.md. */
 export type Controller =
   | { form: 'gain', shape?: TransferFunction }
   | { form: 'pd' }

@@ -46,7 +46,7 @@ const transferFunctionSchema = z.strictObject({
   denominator: coefficients('the denominator'),
 })
 
-/** Fields that the contract names and this version does not compute yet are accepted here and refused with a 422 by the loop resolver. */
+/** Fields that docs/http-contract.md names and this version does not compute yet are accepted here and refused with a 422 by the loop resolver. */
 export const loopSchema = z.strictObject({
   plant: plantSchema,
   sensor: plantSchema.optional(),

@@ -1,5 +1,5 @@
 /**
- * The locus of one-gain loops against the 50-digit cases (made with mpmath by the definitions of the design's method; seeded random loops).
+ * The locus of one-gain loops against the 50-digit cases (made with mpmath by the definitions of docs/method.md; seeded random loops).
  */
 import { describe, expect, it } from 'vitest'
 import { analyzeLoop } from '#shared/control/analyze'

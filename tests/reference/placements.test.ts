@@ -1,5 +1,5 @@
 /**
- * Gains and closed-loop roots against the 50-digit cases (made with mpmath by the definitions of the design's method; seeded random loops).
+ * Gains and closed-loop roots against the 50-digit cases (made with mpmath by the definitions of docs/method.md; seeded random loops).
  */
 import { describe, expect, it } from 'vitest'
 import { loopFunctions } from '#shared/control/controller'

@@ -5,7 +5,7 @@ import { solveDesign } from '#shared/control/solve'
 import type { TransferFunction } from '#shared/control/types'
 import { expectClose } from '../helpers/published'
 
-/** Closed loops at a design point with one free gain, solved with mpmath in 50-digit arithmetic by the definitions of the design's method.md. */
+/** Closed loops at a design point with one free gain, solved with mpmath in 50-digit arithmetic by the definitions of docs/method.md. */
 interface OneGainCase {
   kind: string
   plant: TransferFunction
@@ -25,7 +25,7 @@ interface OneGainCase {
 
 const { oneGain } = JSON.parse(readFileSync(new URL('../fixtures/loops-50-digit.json', import.meta.url), 'utf8')) as { oneGain: OneGainCase[] }
 
-/** Named as in method.md, "accuracy that must hold"; the response itself is held tighter. */
+/** Named as in docs/method.md, "accuracy that must hold"; the response itself is held tighter. */
 const tolerance = { root: 1e-10, gain: 1e-10, overshootPoints: 1e-6, time: 1e-7, margin: 1e-8, output: 1e-11 }
 
 function expectFigure(actual: number | null, wanted: number | null, relative: number, what: string): void {

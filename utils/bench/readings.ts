@@ -64,7 +64,7 @@ function withUnit(figure: string, unit: string): string {
 
 /**
  * The damping ratio is a reading only by its verdict: it is that of the least damped root. An unstable loop has no delay that it could bear; the
- * figure of the contract tells by how much it misses one.
+ * figure of docs/http-contract.md tells by how much it misses one.
  */
 export function readingValue(name: ReadingName, { readings, stable }: Pick<DesignSolution, 'readings' | 'stable'>): number | null | undefined {
   if (name === 'dampingRatio') return undefined

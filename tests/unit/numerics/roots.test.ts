@@ -4,7 +4,7 @@ import { fromRoots } from '#shared/numerics/polynomial'
 import { realRoots, roots } from '#shared/numerics/roots'
 import { seededRandom } from '../../helpers/random'
 
-/** Simple roots: the accuracy that method.md of the design asks for. */
+/** Simple roots: the accuracy that docs/method.md asks for. */
 const simpleTolerance = 1e-10
 
 /** Largest distance from a wanted root to the nearest found one that is not taken yet, relative to its size. */

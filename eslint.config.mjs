@@ -2,7 +2,8 @@ import vue from 'eslint-plugin-vue'
 import tseslint from 'typescript-eslint'
 
 /**
- * The arrows of the architecture: numerics <- control <- schemas, document <- server, stores, composables <- components <- pages.
+ * The arrows of the architecture: numerics <- control <- schemas, document <- server, and on the other side
+ * schemas, document <- utils <- stores, composables <- components <- pages, layouts, middleware, plugins.
  * Each rule lists what the files of a room may not import.
  */
 const rooms = [
@@ -13,7 +14,7 @@ const rooms = [
   { files: ['server/**'], forbid: ['stores', 'composables', 'components', 'pages'] },
   { files: ['stores/**', 'composables/**'], forbid: ['server', 'components', 'pages'] },
   { files: ['components/**'], forbid: ['server', 'pages'] },
-  { files: ['pages/**', 'layouts/**', 'middleware/**'], forbid: ['server'] },
+  { files: ['pages/**', 'layouts/**', 'middleware/**', 'plugins/**'], forbid: ['server'] },
 ]
 
 const frameworks = ['vue', 'vue-*', 'nuxt', 'nuxt/*', '#imports', '#app', 'pinia', 'konva', 'h3', 'nitropack', 'drizzle-orm', 'better-sqlite3', 'mathjs']

@@ -72,7 +72,7 @@ export function loopFunctions(model: LoopModel, controller: Controller, gains: G
 }
 
 /**
- * L0: the loop transfer without its overall gain, so that L = overallGain L0.
+ * L0: the loop transfer without its overall gain, so that L = K L0.
  * @param gains needed by every form but `gain`. For forms with one k it is taken out; for pd, pi and rate the gains stay inside as they are, so
  *   that the overall gain is a factor on both, 1 at the present design.
  */
@@ -86,11 +86,6 @@ export function openLoop(model: LoopModel, controller: Controller, gains?: Gains
   if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to analyse', 'gains')
   refuseImproper(loop)
   return inRange(loop)
-}
-
-/** The K of L = K L0: k where the form has one, else 1 (the present gains are inside L0). */
-export function overallGain(gains: Gains): number {
-  return 'k' in gains ? gains.k : 1
 }
 
 function controllerPolynomials(controller: Controller, gains: Gains): ControllerPolynomials {
@@ -119,7 +114,7 @@ function controllerPolynomials(controller: Controller, gains: Gains): Controller
 }
 
 /** C0 of the `gain` form; 1 where none is given. */
-export function controllerShape(controller: { shape?: TransferFunction }): TransferFunction {
+function controllerShape(controller: { shape?: TransferFunction }): TransferFunction {
   const { numerator, denominator } = controller.shape ?? { numerator: [1], denominator: [1] }
   if (polynomial.isZero(numerator)) throw new InvalidInputError('controller.shape.numerator', 'the numerator of the controller shape is zero')
   if (polynomial.isZero(denominator)) throw new InvalidInputError('controller.shape.denominator', 'the denominator of the controller shape is zero')
@@ -136,7 +131,7 @@ function refuseImproper(loop: TransferFunction): void {
  * The same transfer function, its coefficients checked to lie in a range in which products of them neither overflow nor vanish.
  * @throws NoAnswerError else
  */
-export function inRange(g: TransferFunction): TransferFunction {
+function inRange(g: TransferFunction): TransferFunction {
   const outside = (coefficient: number) => coefficient !== 0 && !(Math.abs(coefficient) >= 1 / largest && Math.abs(coefficient) <= largest)
   if (g.numerator.some(outside) || g.denominator.some(outside)) {
     throw new NoAnswerError('the numbers of this loop are too large or too small to compute with: choose units nearer to its size')

@@ -20,7 +20,7 @@ export interface Placement {
 }
 
 /** A leftover angle below this counts as on the locus (1e-6 degrees). */
-export const onLocusTolerance = 1e-6 * Math.PI / 180
+const onLocusTolerance = 1e-6 * Math.PI / 180
 
 /**
  * Gains that put a closed-loop root at the design point (for the one-gain form: the gain of the magnitude condition, with the angle left over).

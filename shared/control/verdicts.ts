@@ -33,6 +33,6 @@ function isMet({ reading, limit, value }: Requirement, actual: number | null, st
 }
 
 /** The smallest damping ratio among the poles; null where there are none. */
-export function leastDamping(poles: readonly Complex[]): number | null {
+function leastDamping(poles: readonly Complex[]): number | null {
   return poles.length === 0 ? null : Math.min(...poles.map(dampingRatioOf))
 }

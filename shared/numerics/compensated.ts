@@ -19,7 +19,7 @@ export function productError(a: number, b: number, product: number): number {
 }
 
 /** The rounding error of a + b, exactly. */
-export function sumError(a: number, b: number, sum: number): number {
+function sumError(a: number, b: number, sum: number): number {
   const part = sum - a
   return (a - (sum - part)) + (b - part)
 }

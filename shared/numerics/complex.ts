@@ -7,16 +7,6 @@ export interface Complex {
 export const zero: Complex = Object.freeze({ re: 0, im: 0 })
 export const one: Complex = Object.freeze({ re: 1, im: 0 })
 
-/** A complex number from its parts. */
-export function complex(re: number, im = 0): Complex {
-  return { re, im }
-}
-
-/** A complex number from its size and its angle in radians. */
-export function polar(size: number, angle: number): Complex {
-  return { re: size * Math.cos(angle), im: size * Math.sin(angle) }
-}
-
 export function add(a: Complex, b: Complex): Complex {
   return { re: a.re + b.re, im: a.im + b.im }
 }
@@ -74,11 +64,6 @@ export function distance(a: Complex, b: Complex): number {
   return Math.hypot(a.re - b.re, a.im - b.im)
 }
 
-/** e^a. */
-export function exp(a: Complex): Complex {
-  return polar(Math.exp(a.re), a.im)
-}
-
 /** Principal square root (real part >= 0). */
 export function sqrt(a: Complex): Complex {
   const size = abs(a)
@@ -87,17 +72,6 @@ export function sqrt(a: Complex): Complex {
   const smaller = Math.abs(a.im) / (2 * larger)
   const sign = a.im < 0 ? -1 : 1
   return a.re >= 0 ? { re: larger, im: sign * smaller } : { re: smaller, im: sign * larger }
-}
-
-/** a^n for a whole n >= 0, by repeated squaring. */
-export function power(a: Complex, n: number): Complex {
-  let result: Complex = one
-  let base = a
-  for (let rest = n; rest > 0; rest = Math.floor(rest / 2)) {
-    if (rest % 2 === 1) result = multiply(result, base)
-    base = multiply(base, base)
-  }
-  return { re: result.re, im: result.im }
 }
 
 export function isFinite(a: Complex): boolean {

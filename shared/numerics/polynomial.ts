@@ -170,11 +170,6 @@ export function alongRay(p: Polynomial, direction: Complex): { re: number[], im:
   return { re: trim(re), im: trim(im) }
 }
 
-/** p(j w) = re(w) + j im(w) as two real polynomials in w; `re` holds even powers only, `im` odd ones. Exact. */
-export function alongImaginaryAxis(p: Polynomial): { re: number[], im: number[] } {
-  return alongRay(p, { re: 0, im: 1 })
-}
-
 /** Sum of all roots, from the two leading coefficients; 0 for a constant. */
 export function sumOfRoots(p: Polynomial): number {
   const [first = 1, second = 0] = trim(p)

@@ -8,7 +8,7 @@ export const limits = {
   parameterName: 32,
   parameterUnit: 32,
   requirements: 16,
-  samples: { least: 20, most: 2000, usual: 400 },
+  samples: { least: 20, most: 2000 },
   title: 120,
   name: 80,
   machine: 80,

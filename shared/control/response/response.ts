@@ -7,8 +7,8 @@ import { modalSum } from './modal-sum'
 import type { Trajectory } from './trajectory'
 import type { DesignSolution, ResponseInput, ResponseOptions, TransferFunction } from '../types'
 
-/** Samples of a response where the caller names no number; the same as the limit of the HTTP contract's usual one. */
-export const usualSamples = 400
+/** Samples of a response where the caller names no number. */
+const usualSamples = 400
 
 /** Largest size of a sample: growth beyond it is cut off, so that every sample is a number. */
 const largestSample = 1e300

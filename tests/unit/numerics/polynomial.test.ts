@@ -37,7 +37,7 @@ describe('polynomial', () => {
   })
 
   it('splits along a ray and along the imaginary axis', () => {
-    expect(polynomial.alongImaginaryAxis([1, 2, 3, 4])).toEqual({ re: [-2, 0, 4], im: [-1, 0, 3, 0] })
+    expect(polynomial.alongRay([1, 2, 3, 4], { re: 0, im: 1 })).toEqual({ re: [-2, 0, 4], im: [-1, 0, 3, 0] })
     const random = seededRandom(3)
     for (let round = 0; round < 50; round++) {
       const p = Array.from({ length: 6 }, () => random() - 0.5)

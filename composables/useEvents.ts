@@ -5,7 +5,6 @@ const reconnectMs = [1_000, 2_000, 5_000, 10_000, 30_000]
  * have been missed. The browser reconnects by itself after a lost line; a refused one is tried again here, ever more slowly.
  */
 export function useEvents(options: { url: string, names: readonly string[], onEvent: (name: string, data: unknown) => void, onResume: () => void, onRefused?: () => void }) {
-  const connected = ref(false)
   let source: EventSource | null = null
   let timer: ReturnType<typeof setTimeout> | undefined
   let openedBefore = false
@@ -14,13 +13,11 @@ export function useEvents(options: { url: string, names: readonly string[], onEv
   function open() {
     source = new EventSource(options.url)
     source.onopen = () => {
-      connected.value = true
       refusals = 0
       if (openedBefore) options.onResume()
       openedBefore = true
     }
     source.onerror = () => {
-      connected.value = false
       if (source?.readyState !== EventSource.CLOSED) return
       options.onRefused?.()
       timer = setTimeout(open, reconnectMs[Math.min(refusals++, reconnectMs.length - 1)])
@@ -30,15 +27,11 @@ export function useEvents(options: { url: string, names: readonly string[], onEv
     }
   }
 
-  function close() {
+  onMounted(open)
+  onScopeDispose(() => {
     clearTimeout(timer)
     source?.close()
-    source = null
-  }
-
-  onMounted(open)
-  onScopeDispose(close)
-  return { connected, close }
+  })
 }
 
 function parse(text: string): unknown {

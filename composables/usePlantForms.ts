@@ -21,7 +21,7 @@ export function usePlantForms() {
     notice.value = null
     const kept = JSON.stringify(present) === chosen ? bench.plantDrafts : {}
     const drafts = { ...kept, [present.form]: present }
-    const plant = drafts[form] ?? await convert(present, form) ?? fresh(form, drafts)
+    const plant = drafts[form] ?? await convert(present, form) ?? fresh(form)
     if (bench.document.loop.plant !== present) return
     bench.plantDrafts = drafts
     chosen = JSON.stringify(plant)
@@ -38,9 +38,8 @@ export function usePlantForms() {
     }
   }
 
-  function fresh(form: PlantForm, drafts: Partial<Record<PlantForm, Plant>>): Plant {
-    const before = Object.keys(drafts).length > 0 ? ' What you typed before is kept in its form.' : ''
-    notice.value = `The plant could not be converted, so this form begins with 1/(s² + s).${before}`
+  function fresh(form: PlantForm): Plant {
+    notice.value = 'The plant could not be converted, so this form begins with 1/(s² + s). What you typed before is kept in its form.'
     return write({ numerator: [1], denominator: [1, 1, 0], zeros: [], poles: [{ re: 0, im: 0 }, { re: -1, im: 0 }] }, form)
   }
 

@@ -60,12 +60,10 @@ export function useSolver(options: { input: MaybeRefOrGetter<ResponseInput> }) {
     }, { immediate: true })
   })
   onScopeDispose(() => store.clear())
-
-  return { frame }
 }
 
 /** The damping ratio of the ray through a point, without the rounding that a drag along the ray leaves; null where the analysis takes none. */
-export function rayOf(point: Complex): number | null {
+function rayOf(point: Complex): number | null {
   const dampingRatio = Number(dampingRatioOf(point).toPrecision(12))
   return dampingRatio > 0 && dampingRatio <= 1 ? dampingRatio : null
 }

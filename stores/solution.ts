@@ -19,8 +19,6 @@ export interface Refusal {
 /** The server's newest answers about the loop on the bench. Nothing of this is saved or shared. */
 export const useSolutionStore = defineStore('solution', () => {
   const solution = shallowRef<DesignSolution | null>(null)
-  /** The question that `solution` answers. */
-  const solvedFor = shallowRef<SolveQuestion | null>(null)
   const analysis = shallowRef<LoopAnalysis | null>(null)
   const solveState = ref<AskingState>('idle')
   const solveRefusal = shallowRef<Refusal | null>(null)
@@ -33,7 +31,7 @@ export const useSolutionStore = defineStore('solution', () => {
 
   const solving = newestWaits<SolveQuestion, DesignSolution>({
     ask: (question, signal) => askServer('/api/design/solve', question, signal),
-    onAnswer: (answer, question, sequence) => receiveSolution(answer, question, sequence),
+    onAnswer: (answer, _question, sequence) => receiveSolution(answer, sequence),
     onRefusal: (refusal, _question, sequence) => refuseSolution(refusal, sequence),
     onState: (state) => { solveState.value = state },
   })
@@ -54,11 +52,10 @@ export const useSolutionStore = defineStore('solution', () => {
   const stale = computed(() => solution.value !== null
     && (status.value === 'waiting' || status.value === 'failed' || Object.keys(fieldIssues.value).length > 0))
 
-  function receiveSolution(answer: DesignSolution, question: SolveQuestion, sequence: number) {
+  function receiveSolution(answer: DesignSolution, sequence: number) {
     if (sequence <= solveShown) return
     solveShown = sequence
     solution.value = markRaw(answer)
-    solvedFor.value = question
     solveRefusal.value = null
   }
 
@@ -105,7 +102,6 @@ export const useSolutionStore = defineStore('solution', () => {
     solving.stop()
     analyzing.stop()
     solution.value = null
-    solvedFor.value = null
     analysis.value = null
     solveRefusal.value = null
     analyzeRefusal.value = null
@@ -113,7 +109,7 @@ export const useSolutionStore = defineStore('solution', () => {
   }
 
   return {
-    solution, solvedFor, analysis, solveState, solveRefusal, analyzeRefusal, fieldIssues,
+    solution, analysis, solveState, solveRefusal, analyzeRefusal, fieldIssues,
     status, issues, message, stale,
     solve: solving.submit, analyze: analyzing.submit, evaluateGains, issueAt, reportField, clear,
   }

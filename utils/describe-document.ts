@@ -37,7 +37,7 @@ function describe({ title, machine, axis, document }: Described): Record<string,
   }
 }
 
-export function describePoint(point: ScenarioDocument['designPoint']): string {
+function describePoint(point: ScenarioDocument['designPoint']): string {
   if ('dampingRatio' in point) return `damping ratio ${figure(point.dampingRatio)}, natural frequency ${figure(point.naturalFrequency)} rad/s`
   const frequency = Math.hypot(point.re, point.im)
   return `${figure(point.re)} + ${figure(point.im)}j (damping ratio ${figure(frequency === 0 ? 0 : -point.re / frequency)}, ${figure(frequency)} rad/s)`

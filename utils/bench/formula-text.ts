@@ -1,5 +1,5 @@
 /** Coefficients in descending powers of s as a formula that can be typed: 2*s^2 + s + 1. */
-export function polynomialText(coefficients: readonly number[]): string {
+function polynomialText(coefficients: readonly number[]): string {
   const order = coefficients.length - 1
   let text = ''
   coefficients.forEach((coefficient, index) => {

@@ -30,7 +30,7 @@ export function commentsOf(scenarioId: string): Comment[] {
   return select().where(eq(comments.scenarioId, scenarioId)).orderBy(asc(comments.createdAt), asc(comments.id)).all().map(toComment)
 }
 
-export function commentOf(scenarioId: string, id: string): Comment | undefined {
+function commentOf(scenarioId: string, id: string): Comment | undefined {
   const row = select().where(and(eq(comments.scenarioId, scenarioId), eq(comments.id, id))).get()
   return row && toComment(row)
 }

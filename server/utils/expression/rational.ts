@@ -28,7 +28,7 @@ export function negate(a: Rational): Rational {
 export function add(a: Rational, b: Rational): Rational {
   const { shared, onlyLeft, onlyRight } = compare(a.factors, b.factors)
   const numerator = polynomial.add(times(a.numerator, onlyRight), times(b.numerator, onlyLeft))
-  return { numerator: numerator.length === 0 ? [0] : numerator, factors: [...shared, ...onlyLeft, ...onlyRight] }
+  return { numerator, factors: [...shared, ...onlyLeft, ...onlyRight] }
 }
 
 export function multiply(a: Rational, b: Rational): Rational {
@@ -63,8 +63,7 @@ const orderOf = (factors: number[][]) => factors.reduce((sum, factor) => sum + f
 
 function times(p: number[], factors: number[][]): number[] {
   if (p.length - 1 + orderOf(factors) > limits.totalOrder) throw new OrderError()
-  const product = factors.reduce<number[]>((sofar, factor) => polynomial.multiply(sofar, factor), p)
-  return product.length === 0 ? [0] : product
+  return factors.reduce<number[]>((sofar, factor) => polynomial.multiply(sofar, factor), p)
 }
 
 function compare(left: number[][], right: number[][]) {

@@ -44,7 +44,6 @@ describe('solution store', () => {
     await settle()
     expect(asked).toHaveLength(2)
     expect(store.solution?.gains).toEqual({ k: 10 })
-    expect(store.solvedFor?.designPoint).toEqual({ re: -10, im: 1 })
     expect([store.status, store.stale]).toEqual(['idle', false])
   })
 

@@ -17,15 +17,31 @@ export function parseNumber(text: string): Parsed<number> {
   return realForm.test(plain) ? finite(Number(plain), trimmed) : { problem: `“${trimmed}” is not a number` }
 }
 
-/** Numbers separated by spaces, commas or semicolons. */
+/** Numbers separated by spaces, commas or semicolons; decimal commas as `splitList` tells them. */
 export function parseNumbers(text: string): Parsed<number[]> {
+  const items = splitList(text)
+  if ('problem' in items) return items
   const numbers: number[] = []
-  for (const item of text.split(/[\s,;]+/).filter(Boolean)) {
+  for (const item of items.value) {
     const parsed = parseNumber(item)
     if ('problem' in parsed) return parsed
     numbers.push(parsed.value)
   }
   return { value: numbers }
+}
+
+/**
+ * The items of a list. Where blanks or semicolons separate them, a comma between two digits is a decimal comma (1,5 2 is 1.5 and 2); where commas
+ * alone do, or the numbers have points, it separates (1,5,2 or 1.5,2). What could be either is refused: the other reading would be another plant without a word.
+ */
+function splitList(text: string): Parsed<string[]> {
+  const trimmed = text.trim()
+  const separated = trimmed.split(/[\s,;]+/).filter(Boolean)
+  const pair = /[^\s,;]*\d,\d[^\s,;]*/.exec(trimmed)?.[0]
+  if (pair === undefined) return { value: separated }
+  if (/;|[^\s,;]\s+[^\s,;]/.test(trimmed)) return { value: trimmed.split(/[\s;]+|(?<!\d),|,(?!\d)/).filter(Boolean) }
+  if (pair.includes('.') || (separated.length > 2 && !/\s/.test(trimmed))) return { value: separated }
+  return { problem: `“${pair}” can be read in two ways: type ${pair.replace(',', '.')} or ${pair.replace(',', ', ')}` }
 }
 
 /**
@@ -36,7 +52,9 @@ export function parsePlaces(text: string): Parsed<Complex[]> {
   const places: Complex[] = []
   // A sign with room on both sides, or a ±, holds the two parts of one place together.
   const joined = text.replaceAll(minus, '-').replace(/\+\/?-/g, '±').replace(/\s*±\s*(?=[\d.ij])|\s+([+-])\s+/gi, (_, sign?: string) => sign ?? '±')
-  for (const item of joined.split(/[\s,;]+/).filter(Boolean)) {
+  const items = splitList(joined)
+  if ('problem' in items) return items
+  for (const item of items.value) {
     const parsed = parsePlace(item)
     if ('problem' in parsed) return parsed
     places.push(...parsed.value)
@@ -46,7 +64,7 @@ export function parsePlaces(text: string): Parsed<Complex[]> {
 
 /** -2, 3j, -1+3j, -1±3j. */
 function parsePlace(item: string): Parsed<Complex[]> {
-  const match = placeForm.exec(item)
+  const match = placeForm.exec(item.replaceAll(',', '.'))
   if (!match) return { problem: `“${item}” is not a place such as −2 or −1 ± 3j` }
   const { onReal, re = '0', sign = '', size } = match.groups!
   if (onReal !== undefined) return finitePlace(Number(onReal), 0, item)

@@ -20,6 +20,22 @@ describe('typed numbers', () => {
     expect(parseNumbers('1 x 2')).toEqual({ problem: '“x” is not a number' })
   })
 
+  it.each([
+    ['1,5 2', [1.5, 2]], ['1,5; 2', [1.5, 2]], ['1;0,25', [1, 0.25]], ['0,012  1,5  0', [0.012, 1.5, 0]], ['1,5 2, 3', [1.5, 2, 3]],
+    ['1,5,2', [1, 5, 2]], ['1, 5, 2', [1, 5, 2]], ['1, 5', [1, 5]], ['1,-5', [1, -5]], ['1.5, 2', [1.5, 2]], ['1.5,2', [1.5, 2]],
+  ])('tells in %s whether a comma stands in a number or between two', (text, value) => {
+    expect(parseNumbers(text)).toEqual({ value })
+  })
+
+  it.each(['1,5', ' 1,5 ', '1,5, 2', '2, 1,5'])('asks in %s, which could be either', (text) => {
+    expect(parseNumbers(text)).toEqual({ problem: '“1,5” can be read in two ways: type 1.5 or 1, 5' })
+  })
+
+  it('refuses a number with two commas in a list of blanks', () => {
+    expect(parseNumbers('1,5,2 3')).toEqual({ problem: '“1,5,2” is not a number' })
+    expect(parseNumbers('1.5,2 3')).toEqual({ problem: '“1.5,2” is not a number' })
+  })
+
   it('gives back what it wrote', () => {
     const random = seededRandom(7)
     for (let i = 0; i < 200; i++) {
@@ -43,6 +59,22 @@ describe('typed places', () => {
     ['', []],
   ])('reads %s with its conjugates', (text, value) => {
     expect(parsePlaces(text)).toEqual({ value })
+  })
+
+  it.each([
+    ['-1,5 -2', [{ re: -1.5, im: 0 }, { re: -2, im: 0 }]],
+    ['-1,5 ± 3,2j; -2', [{ re: -1.5, im: 3.2 }, { re: -1.5, im: -3.2 }, { re: -2, im: 0 }]],
+    ['-1, -2', [{ re: -1, im: 0 }, { re: -2, im: 0 }]],
+    ['-1,-2', [{ re: -1, im: 0 }, { re: -2, im: 0 }]],
+    ['0,1,2', [{ re: 0, im: 0 }, { re: 1, im: 0 }, { re: 2, im: 0 }]],
+  ])('tells in %s whether a comma stands in a figure or between two places', (text, value) => {
+    expect(parsePlaces(text)).toEqual({ value })
+  })
+
+  it('asks where a comma could be either', () => {
+    expect(parsePlaces('-1,5')).toEqual({ problem: '“-1,5” can be read in two ways: type -1.5 or -1, 5' })
+    expect(parsePlaces('-1,5 ± 3j')).toEqual({ problem: '“-1,5±3j” can be read in two ways: type -1.5±3j or -1, 5±3j' })
+    expect(parsePlaces('0,5j')).toHaveProperty('problem')
   })
 
   it('refuses what is no place', () => {

@@ -42,9 +42,13 @@ export function commandOf({ key, shiftKey, ctrlKey, metaKey, altKey }: KeyPress)
   }
 }
 
-/** One key step along the ray: a round amount near 2 % of the natural frequency (fine: a tenth of it), landing on its multiples. */
+/**
+ * One key step along the ray: a round amount near 2 % of the natural frequency (fine: a tenth of it), landing on its multiples. The origin lies on
+ * every ray and has no size to step by: a point there stays.
+ */
 export function stepAlong(point: Complex, direction: 1 | -1, fine: boolean): Complex {
   const frequency = abs(point)
+  if (frequency === 0) return point
   const step = niceStep(frequency / 100) / (fine ? 10 : 1)
   const target = nextMultiple(frequency, step, direction)
   // Scaling keeps the very ray that the point lies on.

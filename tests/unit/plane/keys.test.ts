@@ -32,6 +32,14 @@ describe('keys', () => {
     expect(Math.hypot(...Object.values(stepAlong(point, -1, true)))).toBeCloseTo(2.195, 12)
   })
 
+  it('leaves a point at the origin where it is', () => {
+    const origin = { re: 0, im: 0 }
+    for (const direction of [1, -1] as const) {
+      expect(stepAlong(origin, direction, false)).toEqual(origin)
+      expect(stepAcross(origin, direction, true)).toEqual(origin)
+    }
+  })
+
   it('never reaches the origin', () => {
     let point = { re: -1e-6, im: 0 }
     for (let n = 0; n < 2000; n++) point = stepAlong(point, -1, false)

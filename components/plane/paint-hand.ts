@@ -1,6 +1,6 @@
 import type { Context } from 'konva/lib/Context'
+import { nearestRoot } from '~/utils/bench/nearest-root'
 import { flagSize } from '~/utils/plane/flags'
-import { nearest } from '~/utils/plane/marks'
 import { rayAngle, visibleRay } from '~/utils/plane/ray'
 import { isInView, toScreen, type ScreenPoint } from '~/utils/plane/viewport'
 import { paint } from '~/utils/plane/colors'
@@ -53,7 +53,7 @@ function paintMeetings(context: Context, { viewport, colors, meetings, point }: 
 
 /** A thin line from the point asked for to the root that the gain obtains nearest to it. */
 function paintReached(context: Context, { viewport, colors, point, roots, onLocus, stale }: HandScene): void {
-  const root = nearest(roots, point)
+  const root = nearestRoot(roots, point)
   if (onLocus || !root) return
   const [from, to] = [toScreen(viewport, point), toScreen(viewport, root)]
   if (Math.hypot(to.x - from.x, to.y - from.y) < ringRadius) return

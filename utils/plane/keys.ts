@@ -1,6 +1,6 @@
 import { dampingRatioOf, pointFromDamping } from '#shared/control/design-point'
 import { abs, type Complex } from '#shared/numerics/complex'
-import { niceStep } from './scale'
+import { niceStep } from '~/utils/nice-step'
 
 export type Command =
   | { do: 'along' | 'across', direction: 1 | -1, fine: boolean }

@@ -16,8 +16,3 @@ export function gatherMarks(points: readonly Complex[]): Mark[] {
   }
   return marks
 }
-
-/** The one of `points` nearest to `to`, or null when there is none. */
-export function nearest(points: readonly Complex[], to: Complex): Complex | null {
-  return points.reduce<Complex | null>((best, point) => best && distance(best, to) <= distance(point, to) ? best : point, null)
-}

@@ -1,3 +1,5 @@
+import { niceStep } from '~/utils/nice-step'
+
 export interface Range {
   min: number
   max: number
@@ -6,13 +8,6 @@ export interface Range {
 const room = { below: 0.04, above: 0.08 }
 /** A range is kept while its content fills at least this part of it. */
 const leastFilled = 0.5
-
-/** 1, 2 or 5 times a power of ten, at least `size`. */
-export function niceStep(size: number): number {
-  const decade = 10 ** Math.floor(Math.log10(size))
-  const factor = [1, 2, 5, 10].find(candidate => candidate * decade >= size * (1 - 1e-9)) ?? 10
-  return factor * decade
-}
 
 /** Round values inside a range, about `count` of them. */
 export function ticksWithin({ min, max }: Range, count: number): number[] {

@@ -2,7 +2,8 @@ import { describe, expect, it } from 'vitest'
 import { seededRandom } from '../../helpers/random'
 import { clipPolygon, clipPolyline, clipSegment, corners } from '~/utils/plane/clip'
 import { hatchLines } from '~/utils/plane/hatch'
-import { gatherMarks, nearest } from '~/utils/plane/marks'
+import { nearestRoot } from '~/utils/bench/nearest-root'
+import { gatherMarks } from '~/utils/plane/marks'
 import { drawRegion, forbiddenRegions } from '~/utils/plane/regions'
 import type { Viewport } from '~/utils/plane/viewport'
 
@@ -126,7 +127,7 @@ describe('marks', () => {
   })
 
   it('find the nearest', () => {
-    expect(nearest([{ re: 0, im: 0 }, { re: 2, im: 1 }], { re: 1.5, im: 0 })).toEqual({ re: 2, im: 1 })
-    expect(nearest([], { re: 0, im: 0 })).toBeNull()
+    expect(nearestRoot([{ re: 0, im: 0 }, { re: 2, im: 1 }], { re: 1.5, im: 0 })).toEqual({ re: 2, im: 1 })
+    expect(nearestRoot([], { re: 0, im: 0 })).toBeNull()
   })
 })

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { decimalsOf, formatImaginaryMark, formatMark, gridStep, niceStep, scaleMarks } from '~/utils/plane/scale'
+import { niceStep } from '~/utils/nice-step'
+import { decimalsOf, formatImaginaryMark, formatMark, gridStep, scaleMarks } from '~/utils/plane/scale'
 
 describe('scale', () => {
   it.each([[0.2, 0.2], [0.21, 0.5], [0.51, 1], [1, 1], [1.01, 2], [3, 5], [7, 10], [2e-6, 2e-6], [3e-7, 5e-7], [4e5, 5e5]])('nice step for %d is %d', (least, step) => {

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { curvePath, valueAt, xOf, yOf, type Panel } from '~/utils/response/draw'
-import { calmRange, extentOf, niceStep, ticksWithin } from '~/utils/response/scale'
+import { niceStep } from '~/utils/nice-step'
+import { calmRange, extentOf, ticksWithin } from '~/utils/response/scale'
 import { calmDuration } from '~/utils/bench/calm-duration'
 import type { DesignSolution } from '#shared/control/types'
 import { seededRandom } from '../../helpers/random'

@@ -4,6 +4,8 @@ import { formatFigure, formatFixed, formatPlain, gap } from './format'
 export interface ReadingDescription {
   name: ReadingName
   label: string
+  /** Its name in `data-test`. */
+  test: string
   unit: string
   /** Decimals for figures of a natural size, else significant digits. */
   decimals?: number
@@ -19,19 +21,19 @@ export interface ReadingDescription {
 
 /** The readings in the order in which an engineer asks for them. */
 export const readingDescriptions: readonly ReadingDescription[] = [
-  { name: 'overshootPercent', label: 'Overshoot', unit: '%', decimals: 2, usualLimit: 'at-most', usualValue: 10, estimate: 'overshootPercent' },
-  { name: 'settlingTime', label: 'Settling time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'settlingTime' },
-  { name: 'riseTime', label: 'Rise time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'riseTime' },
-  { name: 'peakTime', label: 'Peak time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'peakTime' },
-  { name: 'phaseMarginDeg', label: 'Phase margin', unit: '°', decimals: 1, none: 'no limit', usualLimit: 'at-least', usualValue: 50 },
-  { name: 'gainMarginDb', label: 'Gain margin', unit: 'dB', decimals: 1, none: 'no limit', usualLimit: 'at-least', usualValue: 8 },
-  { name: 'delayMargin', label: 'Delay margin', unit: 's', digits: 3, none: 'no limit', usualLimit: 'at-least', usualValue: 0.01 },
-  { name: 'sensitivityPeak', label: 'Sensitivity peak', unit: '', digits: 3, usualLimit: 'at-most', usualValue: 1.6 },
-  { name: 'bandwidth', label: 'Bandwidth', unit: 'rad/s', digits: 3, none: 'no limit', usualLimit: 'at-least', usualValue: 1 },
-  { name: 'steadyStateErrorStep', label: 'Step error', unit: '', digits: 3, usualLimit: 'at-most', usualValue: 0.05 },
-  { name: 'steadyStateErrorRamp', label: 'Ramp error', unit: 's', digits: 3, none: 'grows', usualLimit: 'at-most', usualValue: 1 },
-  { name: 'peakEffort', label: 'Peak effort', unit: '', digits: 4, none: 'impulse', usualLimit: 'at-most', usualValue: 10 },
-  { name: 'dampingRatio', label: 'Least damping', unit: '', digits: 3, usualLimit: 'at-least', usualValue: 0.5 },
+  { name: 'overshootPercent', label: 'Overshoot', test: 'overshoot', unit: '%', decimals: 2, usualLimit: 'at-most', usualValue: 10, estimate: 'overshootPercent' },
+  { name: 'settlingTime', label: 'Settling time', test: 'settling-time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'settlingTime' },
+  { name: 'riseTime', label: 'Rise time', test: 'rise-time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'riseTime' },
+  { name: 'peakTime', label: 'Peak time', test: 'peak-time', unit: 's', digits: 4, usualLimit: 'at-most', usualValue: 1, estimate: 'peakTime' },
+  { name: 'phaseMarginDeg', label: 'Phase margin', test: 'phase-margin', unit: '°', decimals: 1, none: 'no limit', usualLimit: 'at-least', usualValue: 50 },
+  { name: 'gainMarginDb', label: 'Gain margin', test: 'gain-margin', unit: 'dB', decimals: 1, none: 'no limit', usualLimit: 'at-least', usualValue: 8 },
+  { name: 'delayMargin', label: 'Delay margin', test: 'delay-margin', unit: 's', digits: 3, none: 'no limit', usualLimit: 'at-least', usualValue: 0.01 },
+  { name: 'sensitivityPeak', label: 'Sensitivity peak', test: 'sensitivity-peak', unit: '', digits: 3, usualLimit: 'at-most', usualValue: 1.6 },
+  { name: 'bandwidth', label: 'Bandwidth', test: 'bandwidth', unit: 'rad/s', digits: 3, none: 'no limit', usualLimit: 'at-least', usualValue: 1 },
+  { name: 'steadyStateErrorStep', label: 'Step error', test: 'step-error', unit: '', digits: 3, usualLimit: 'at-most', usualValue: 0.05 },
+  { name: 'steadyStateErrorRamp', label: 'Ramp error', test: 'ramp-error', unit: 's', digits: 3, none: 'grows', usualLimit: 'at-most', usualValue: 1 },
+  { name: 'peakEffort', label: 'Peak effort', test: 'peak-effort', unit: '', digits: 4, none: 'impulse', usualLimit: 'at-most', usualValue: 10 },
+  { name: 'dampingRatio', label: 'Least damping', test: 'damping-ratio', unit: '', digits: 3, usualLimit: 'at-least', usualValue: 0.5 },
 ]
 
 export function describeReading(name: ReadingName): ReadingDescription {

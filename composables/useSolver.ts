@@ -1,9 +1,9 @@
 import type { MaybeRefOrGetter } from 'vue'
 import type { Complex } from '#shared/numerics/complex'
-import type { DesignSolution, Gains, ResponseInput } from '#shared/control/types'
-import type { ControllerForm } from '#shared/schemas/loop'
+import type { DesignSolution, ResponseInput } from '#shared/control/types'
 import type { AnalyzeQuestion, SolveQuestion } from '~/stores/solution'
 import { dampingRatioOf } from '#shared/control/design-point'
+import { formOf } from '~/utils/bench/controller-forms'
 import { calmDuration, type TimeFrame } from '~/utils/bench/calm-duration'
 
 /**
@@ -26,12 +26,13 @@ export function useSolver(options: { input: MaybeRefOrGetter<ResponseInput> }) {
 
   const analyzeQuestion = computed<AnalyzeQuestion | null>(() => {
     const { loop, controller, designPoint } = bench.document
-    const solved = store.solution
-    if (controller.form !== 'gain' && !(solved && fits(controller.form, solved.gains))) return null
+    // An answer may lag behind a change of the form: its gains then belong to the form before.
+    const gains = store.solution && formOf(store.solution.gains) === controller.form ? store.solution.gains : null
+    if (controller.form !== 'gain' && gains === null) return null
     const question: AnalyzeQuestion = { loop, controller }
     const dampingRatio = rayOf(designPoint)
     if (dampingRatio !== null) question.dampingRatio = dampingRatio
-    if (controller.form !== 'gain') question.gains = solved!.gains
+    if (controller.form !== 'gain' && gains !== null) question.gains = gains
     return question
   })
 
@@ -66,17 +67,6 @@ export function useSolver(options: { input: MaybeRefOrGetter<ResponseInput> }) {
 function rayOf(point: Complex): number | null {
   const dampingRatio = Number(dampingRatioOf(point).toPrecision(12))
   return dampingRatio > 0 && dampingRatio <= 1 ? dampingRatio : null
-}
-
-/** Answers may lag behind a change of the form: their gains then belong to the form before. */
-function fits(form: ControllerForm['form'], gains: Gains): boolean {
-  switch (form) {
-    case 'pd': return 'kd' in gains
-    case 'pi': return 'ki' in gains
-    case 'rate': return 'kr' in gains
-    case 'lead': return 'zero' in gains
-    default: return 'k' in gains
-  }
 }
 
 function loopOf(question: string): string {

@@ -1,6 +1,7 @@
 import type { DesignSolution, Gains } from '#shared/control/types'
 import type { Complex } from '#shared/numerics/complex'
 import type { ControllerForm } from '#shared/schemas/loop'
+import { controllerForms } from '~/utils/bench/controller-forms'
 import { nearestRoot } from '~/utils/bench/nearest-root'
 
 /** Typed gains: the server says where they put the loop, and the design point goes there. */
@@ -37,10 +38,10 @@ export function useTypedGains() {
 }
 
 /**
- * The root that stands for the gains: the dominant one. Forms with two gains are given back by a complex pair alone (at a real point the
+ * The root that stands for the gains: the dominant one. Forms that reach every point are given back by a complex pair alone (at a real point the
  * placement is another one, a double root), so there the pair nearest to the present point stands in.
  */
 function pointFor(answer: DesignSolution, form: ControllerForm['form'], present: Complex): Complex | null {
-  if (form === 'gain' || answer.designPoint.im > 0) return answer.designPoint
+  if (!controllerForms[form].reachesEveryPoint || answer.designPoint.im > 0) return answer.designPoint
   return nearestRoot(answer.closedLoopPoles.filter(pole => pole.im > 0), present)
 }

@@ -1,5 +1,10 @@
+import { dampingRatioOf } from '#shared/control/design-point'
+import { abs, type Complex } from '#shared/numerics/complex'
 import type { ScenarioDocument } from '#shared/schemas/document'
 import type { Plant } from '#shared/schemas/loop'
+import { requirementWords } from '~/utils/anchor-words'
+import { controllerForms } from '~/utils/bench/controller-forms'
+import { formatComplex, formatPlain } from '~/utils/bench/format'
 
 export interface Difference {
   what: string
@@ -39,8 +44,7 @@ function describe({ title, machine, axis, document }: Described): Record<string,
 
 function describePoint(point: ScenarioDocument['designPoint']): string {
   if ('dampingRatio' in point) return `damping ratio ${figure(point.dampingRatio)}, natural frequency ${figure(point.naturalFrequency)} rad/s`
-  const frequency = Math.hypot(point.re, point.im)
-  return `${figure(point.re)} + ${figure(point.im)}j (damping ratio ${figure(frequency === 0 ? 0 : -point.re / frequency)}, ${figure(frequency)} rad/s)`
+  return `${place(point)} (damping ratio ${figure(dampingRatioOf(point))}, ${figure(abs(point))} rad/s)`
 }
 
 function describePlant(plant: Plant): string {
@@ -50,41 +54,31 @@ function describePlant(plant: Plant): string {
       return [plant.expression, ...parameters].join(', ')
     }
     case 'coefficients':
-      return `(${plant.numerator.map(figure).join(', ')}) / (${plant.denominator.map(figure).join(', ')})`
+      return describeRatio(plant)
     case 'zeros-poles-gain':
       return `gain ${figure(plant.gain)}, zeros ${plant.zeros.map(place).join(', ') || 'none'}, poles ${plant.poles.map(place).join(', ') || 'none'}`
   }
 }
 
+function describeRatio({ numerator, denominator }: { numerator: number[], denominator: number[] }): string {
+  return `(${numerator.map(figure).join(', ')}) / (${denominator.map(figure).join(', ')})`
+}
+
 function describeController(controller: ScenarioDocument['controller']): string {
+  const { label } = controllerForms[controller.form]
   switch (controller.form) {
-    case 'gain': return controller.shape ? `one gain, shape (${controller.shape.numerator.map(figure).join(', ')}) / (${controller.shape.denominator.map(figure).join(', ')})` : 'one gain'
-    case 'pd': return 'proportional and derivative'
-    case 'pi': return 'proportional and integral'
-    case 'rate': return 'proportional with rate feedback'
-    case 'lead': return `lead, pole-zero ratio ${figure(controller.poleZeroRatio)}`
-    case 'lag': return `lag, pole-zero ratio ${figure(controller.poleZeroRatio)}, zero ${figure(controller.zero)}`
-    case 'pid': return 'proportional, integral and derivative'
+    case 'gain': return controller.shape ? `${label}, shape ${describeRatio(controller.shape)}` : label
+    case 'lead': return `${label}, pole-zero ratio ${figure(controller.poleZeroRatio)}`
+    case 'lag': return `${label}, pole-zero ratio ${figure(controller.poleZeroRatio)}, zero ${figure(controller.zero)}`
+    default: return label
   }
 }
 
 function describeRequirements(requirements: ScenarioDocument['requirements']): string {
-  return requirements.map(({ reading, limit, value }) => `${readingWords(reading)} ${limit === 'at-most' ? 'at most' : 'at least'} ${figure(value)}`).join('; ') || 'none'
+  return requirements.map(requirementWords).join('; ') || 'none'
 }
 
-const words: Record<string, string> = {
-  overshootPercent: 'overshoot', settlingTime: 'settling time', riseTime: 'rise time', peakTime: 'peak time', peakEffort: 'peak effort',
-  steadyStateErrorStep: 'steady-state error (step)', steadyStateErrorRamp: 'steady-state error (ramp)', gainMarginDb: 'gain margin',
-  phaseMarginDeg: 'phase margin', delayMargin: 'delay margin', sensitivityPeak: 'sensitivity peak', bandwidth: 'bandwidth', dampingRatio: 'damping ratio',
-}
-
-export const readingWords = (reading: string): string => words[reading] ?? reading
-
-function place({ re, im }: { re: number, im: number }): string {
-  return im === 0 ? figure(re) : `${figure(re)} ${im < 0 ? '−' : '+'} ${figure(Math.abs(im))}j`
-}
-
-/** Four significant digits, with a true minus sign. */
-function figure(value: number): string {
-  return String(Number(value.toPrecision(4))).replace('-', '−')
-}
+/** Four significant digits tell two versions apart and stay readable. */
+const digits = 4
+const figure = (value: number) => formatPlain(value, digits)
+const place = (at: Complex) => formatComplex(at, digits)

@@ -1,6 +1,7 @@
 import { computed, toRaw, type ComputedRef, type ShallowRef } from 'vue'
 import type { Complex } from '#shared/numerics/complex'
 import type { DesignSolution, LoopAnalysis, Requirement } from '#shared/control/types'
+import { controllerForms, formOf } from '~/utils/bench/controller-forms'
 import type { PlaneColors } from '~/utils/plane/colors'
 import type { FlagPlace } from '~/utils/plane/flags'
 import { gripPosition } from '~/utils/plane/ray'
@@ -44,7 +45,7 @@ export function composeScenes(
     const { solution, stale } = figures
     if (!solution || stale) return false
     const point = under.live.value
-    if (reachesEveryPoint(solution) || under.meetings.value.some(({ re, im }) => re === point.re && im === point.im)) return true
+    if (controllerForms[formOf(solution.gains)].reachesEveryPoint || under.meetings.value.some(({ re, im }) => re === point.re && im === point.im)) return true
     const apart = Math.hypot(solution.designPoint.re - point.re, solution.designPoint.im - point.im)
     return solution.onLocus && apart * (view.viewport.value?.scale ?? Infinity) < 0.5
   })
@@ -66,9 +67,4 @@ export function composeScenes(
     memory,
   })
   return { ground, locus, hand }
-}
-
-/** Forms with two free gains and the lead put a root exactly where it is asked for; a single gain reaches the locus alone. */
-function reachesEveryPoint({ gains }: DesignSolution): boolean {
-  return !('k' in gains) || 'zero' in gains
 }

@@ -17,14 +17,6 @@ const meanings: Record<string, string> = {
   pole: 'of the lead',
 }
 
-/** What the controller makes of the error e (and for rate feedback of the output y), as the gains enter it. */
-export const controllerLaws: Readonly<Record<string, string>> = {
-  pd: 'u = (kp + kd s) e',
-  pi: 'u = (kp + ki / s) e',
-  rate: 'u = kp e − kr s y',
-  lead: 'u = k (s − zero) / (s − pole) e',
-}
-
 /** The gains in the order in which they are read. */
 export function namedGains(gains: Gains): NamedGain[] {
   return Object.entries(gains).map(([name, value]) => ({ name, value: value as number, meaning: meanings[name]! }))

@@ -1,13 +1,16 @@
 import { describe, expect, it } from 'vitest'
+import { controllerForms, formOf, offeredForms } from '~/utils/bench/controller-forms'
 import { demoScenario } from '~/utils/bench/demo-scenario'
 import { estimateSentence } from '~/utils/bench/estimate-sentence'
 import { sayField, sayIssue } from '~/utils/bench/field-words'
 import { negativeGainSentence } from '~/utils/bench/gain-words'
 import { formatLimit, readingDescriptions } from '~/utils/bench/readings'
+import { differences } from '~/utils/describe-document'
 import { readingNames } from '#shared/schemas/design'
 import { scenarioDocumentSchema } from '#shared/schemas/document'
 import { solveDesign } from '#shared/control/solve'
-import type { Readings } from '#shared/control/types'
+import { controllerSchema } from '#shared/schemas/loop'
+import type { Controller, Readings } from '#shared/control/types'
 
 const design = (overshoot: number | null, settling: number | null, stable = true) => ({
   stable,
@@ -41,6 +44,40 @@ describe('sentences of the bench', () => {
     expect(readingDescriptions.map(({ name }) => name).sort()).toEqual([...readingNames].sort())
     expect(formatLimit({ reading: 'settlingTime', limit: 'at-most', value: 3.5 })).toBe('≤\u00A03.5\u00A0s')
     expect(formatLimit({ reading: 'phaseMarginDeg', limit: 'at-least', value: 50 })).toBe('≥\u00A050°')
+  })
+})
+
+describe('the table of controller forms', () => {
+  const model = { plant: { numerator: [2], denominator: [1, 3, 2, 0] }, rateFeedback: 0 }
+
+  it('describes every form of the schema, once', () => {
+    expect(Object.keys(controllerForms).sort()).toEqual(controllerSchema.options.map(({ shape }) => shape.form.value).sort())
+  })
+
+  it.each(offeredForms)('names the gains that the engine gives for %s, and what they reach', (form) => {
+    const solution = solveDesign(model, controllerForms[form].fresh as Controller, { designPoint: { re: -0.5, im: 1 } })
+    expect(Object.keys(solution.gains)).toEqual(controllerForms[form].gains)
+    expect(formOf(solution.gains)).toBe(form)
+    expect(solution.onLocus).toBe(controllerForms[form].reachesEveryPoint)
+  })
+})
+
+describe('two versions of a scenario', () => {
+  it('differ in words to choose by', () => {
+    const { title, machine, axis, document } = demoScenario
+    const mine = { title, machine, axis, document }
+    expect(differences(mine, mine)).toEqual([])
+    const other = { ...document, controller: { form: 'lead' as const, poleZeroRatio: 8 }, designPoint: { re: -1, im: 0.5 }, requirements: document.requirements.slice(0, 2) }
+    expect(differences(mine, { ...mine, machine: '', document: other })).toEqual([
+      { what: 'Machine', mine: 'Quay crane 2', theirs: 'none' },
+      { what: 'Design point', mine: '−0.5783 + 0.7711j (damping ratio 0.6, 0.9639 rad/s)', theirs: '−1.000 + 0.5000j (damping ratio 0.8944, 1.118 rad/s)' },
+      { what: 'Controller', mine: 'one gain, k', theirs: 'lead, pole-zero ratio 8' },
+      {
+        what: 'Requirements',
+        mine: 'overshoot at most 12\u00A0%; settling time at most 7\u00A0s; phase margin at least 55°; gain margin at least 12\u00A0dB; ramp error at most 1.5\u00A0s',
+        theirs: 'overshoot at most 12\u00A0%; settling time at most 7\u00A0s',
+      },
+    ])
   })
 })
 

@@ -25,12 +25,16 @@ interface Realisation {
 const stepAngle = 0.4
 const frozen = 1e250
 
+/**
+ * The inverse transform as a signal, whatever its poles: the answer of N/D to a unit step for one integrator, to a unit ramp for two.
+ * One that grows can be evaluated and sampled, but not walked (`instant`, `previous`).
+ */
 export function cascade(transform: Transform): Trajectory {
   const system = realise(transform)
   const remains = remainingPolynomial(transform)
   const decays = transform.poles.every(pole => diesOut(pole) || (pole.re === 0 && pole.im === 0))
   const steady = (t: number) => polynomialAt(remains, t)
-    const outputSlope = applyTransposed(system.matrix, system.output)
+  const outputSlope = applyTransposed(system.matrix, system.output)
   const remainsSlope = remains.slice(1).map((coefficient, i) => (i + 1) * coefficient)
   const steadySlope = (t: number) => polynomialAt(remainsSlope, t)
   const transientOf = (state: Float64Array, t: number) => dot(system.output, state) - steady(t)

@@ -5,6 +5,7 @@ export function wrapAngle(radians: number): number {
   return wrapped <= -Math.PI ? wrapped + turn : wrapped
 }
 
+/** An angle in radians as degrees, not wrapped. */
 export function toDegrees(radians: number): number {
   return radians * 180 / Math.PI
 }

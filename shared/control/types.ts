@@ -69,22 +69,42 @@ export interface LoopAnalysis {
   rayIntersections?: { point: Complex, gain: number }[]
 }
 
+/**
+ * Every reading of the closed loop: figures of the response to the reference step, then figures of the loop transfer L and of T = r to y. Null where a
+ * figure does not exist; the definitions are those of docs/method.md.
+ */
 export interface Readings {
+  /** The limit of the output, in its unit. */
   finalValue: number | null
+  /** Percent of the final value by which the largest value exceeds it; 0 when it never does. */
   overshootPercent: number | null
+  /** Seconds to that largest value; null without overshoot. */
   peakTime: number | null
+  /** Seconds from first reaching 10 % to first reaching 90 % of the final value. */
   riseTime: number | null
+  /** Seconds to the last instant outside the settling band (2 % of the final value unless asked otherwise). */
   settlingTime: number | null
+  /** What r - y tends to after the step, in the unit of the output, signed. */
   steadyStateErrorStep: number | null
+  /** What r - y tends to after a ramp of the amplitude per second, signed; null where it grows. */
   steadyStateErrorRamp: number | null
+  /** Largest |controller output|, in its unit; null where a derivative makes it an impulse. */
   peakEffort: number | null
+  /** Factors on the overall gain at which the loop stands on the border of stability, above and below 1; null: none that way. */
   gainMargin: { upper: number | null, lower: number | null }
+  /** The one of both that is nearer to 0, in dB: negative when it lies below. */
   gainMarginDb: number | null
+  /** Degrees, signed: the smallest |180 + arg L| over all gain crossovers. */
   phaseMarginDeg: number | null
+  /** rad/s: the gain crossover of that phase margin. */
   gainCrossover: number | null
+  /** rad/s: where arg L is -180 degrees, for the gain margin in dB; null where that lies at infinity. */
   phaseCrossover: number | null
+  /** Seconds: the least dead time that makes a stable loop unstable; negative in an unstable loop whose phase margin is. */
   delayMargin: number | null
+  /** The largest |1/(1 + L(jw))|, w >= 0. */
   sensitivityPeak: number | null
+  /** rad/s: the first frequency at which |T| has fallen 3 dB below |T(0)|. */
   bandwidth: number | null
 }
 

@@ -11,6 +11,8 @@ export type Margins = Pick<Readings, 'gainMargin' | 'gainMarginDb' | 'phaseMargi
 const vanishing = 1e-11
 /** A crossing whose refinement would move it by more than this share is no crossing. */
 const refinement = 1e-3
+/** At a phase crossover the refined L is real up to this share: rounding leaves far less, a place where the angle only comes near -180 degrees more. */
+const realEnough = 1e-6
 
 /** A place where L(jw) is real and negative: w, and the factor on the gain that carries it to -1. */
 interface PhaseCrossing { frequency: number | null, factor: number }
@@ -54,7 +56,7 @@ function phaseCrossings(loop: TransferFunction): PhaseCrossing[] {
     // Newton on the angle that L lacks to -180 degrees.
     const frequency = refine(start, w => ({ value: arg(negate(atFrequency(loop, w))), slope: logarithmicSlope(loop, w).re }))
     const value = frequency === null ? null : atFrequency(loop, frequency)
-    if (value !== null && value.re < 0 && Math.abs(value.im) < 1e-6 * -value.re) crossings.push({ frequency, factor: 1 / abs(value) })
+    if (value !== null && value.re < 0 && Math.abs(value.im) < realEnough * -value.re) crossings.push({ frequency, factor: 1 / abs(value) })
   }
   const atZero = -denominator[denominator.length - 1]! / numerator[numerator.length - 1]!
   if (atZero > 0 && Number.isFinite(atZero)) crossings.push({ frequency: 0, factor: atZero })

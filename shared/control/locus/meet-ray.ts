@@ -14,6 +14,13 @@ export interface Meeting {
 const coincidence = 1e-7
 /** The angle (radians) within which a touching point is on the locus although rounding parted its double root into a complex pair. */
 const touchTolerance = 1e-12
+/**
+ * A root of the condition belongs to a place on the line while its imaginary part is below this share: where the line touches the locus, rounding parts
+ * the double root by some 1e-8, and further among clustered places. Whether it truly touches is decided by the angle.
+ */
+const partedByRounding = 1e-5
+/** Polishing changes last digits: a step beyond this share of the radius leads to another place. */
+const polishing = 1e-6
 
 /**
  * Where the half line s = r direction, r > 0, meets the locus D + K N = 0 with K > 0: positive roots of the real polynomial
@@ -27,7 +34,7 @@ export function meetRay(open: TransferFunction, direction: Complex): Meeting[] {
   if (polynomial.isZero(condition)) return []
   const radii = direction.re === 0 ? rootsThroughSquares(condition) : roots(condition)
   const meetings = radii
-    .filter(root => root.re > 0 && root.im >= 0 && Math.abs(root.im) <= 1e-5 * root.re)
+    .filter(root => root.re > 0 && root.im >= 0 && Math.abs(root.im) <= partedByRounding * root.re)
     .map(root => ({ radius: polish(open, direction, root.re), exact: root.im === 0 }))
     .filter(({ radius, exact }) => exact || Math.abs(sine(open, complex.scale(direction, radius))) <= touchTolerance)
     .map(({ radius }) => radius)
@@ -81,7 +88,7 @@ function polish(open: TransferFunction, direction: Complex, start: number): numb
     const value = n.im * d.re - n.re * d.im
     const slope = nSlope.im * d.re + n.im * dSlope.re - nSlope.re * d.im - n.re * dSlope.im
     const step = value / slope
-    if (!(Math.abs(step) <= 1e-6 * r)) break
+    if (!(Math.abs(step) <= polishing * r)) break
     r -= step
   }
   return r

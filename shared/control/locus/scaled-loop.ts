@@ -23,6 +23,10 @@ export interface ScaledLoop {
  */
 const mostMoves = 30_000
 
+/**
+ * The loop in units of its figure, with the whole allowance of work.
+ * @param extent size of the figure in the units of the loop (rad/s), > 0
+ */
 export function scaleLoop(loop: FactoredLoop, extent: number): ScaledLoop {
   const shrink = (places: Complex[]) => places.map(place => complex.scale(place, 1 / extent))
   return {

@@ -1,10 +1,33 @@
+import { loopFunctions } from '#shared/control/controller'
+import type { Complex } from '#shared/numerics/complex'
 import { multiply } from '#shared/numerics/polynomial'
+import { roots } from '#shared/numerics/roots'
 import { solveDesign, type SolveOptions } from '#shared/control/solve'
-import type { DesignSolution, LoopModel, TransferFunction } from '#shared/control/types'
+import type { Controller, DesignSolution, Gains, LoopModel, TransferFunction } from '#shared/control/types'
 
 /** A loop around a plant given by coefficients, without inner feedback. */
 export function loopOf(numerator: number[], denominator: number[]): LoopModel {
   return { plant: { numerator, denominator }, rateFeedback: 0 }
+}
+
+/** One gain with a fixed shape. */
+export function shaped(numerator: number[], denominator: number[]): Controller {
+  return { form: 'gain', shape: { numerator, denominator } }
+}
+
+/** Places on the real axis. */
+export function real(...places: number[]): Complex[] {
+  return places.map(re => ({ re, im: 0 }))
+}
+
+/** A complex figure as the published cases write it. */
+export function pair({ re, im }: Complex): [number, number] {
+  return [re, im]
+}
+
+/** The closed-loop roots on the real axis: without the pair of the design. */
+export function realRootsAt(model: LoopModel, controller: Controller, gains: Gains): number[] {
+  return roots(loopFunctions(model, controller, gains).characteristic).filter(root => root.im === 0).map(root => root.re)
 }
 
 /** Product of factors, each a polynomial in descending powers. */

@@ -44,6 +44,18 @@ export function publishedCase(id: string) {
   }
 }
 
+/** Source and provenance of a case, for the title of a test. */
+export function titled(id: string): string {
+  return publishedCase(id).title
+}
+
+/** Every figure tightly against the recomputed one of its name, and against the printed one where there is one. */
+export function holdAll(
+  c: ReturnType<typeof publishedCase>, figures: Record<string, number | readonly (number | readonly number[])[]>, relative = 1e-10,
+): void {
+  for (const [name, figure] of Object.entries(figures)) c.holds(name, [figure].flat(2) as number[], relative)
+}
+
 /** Relative deviation; figures below 1e-3 are compared with 1e-3, so that a wanted 0 can be met. */
 export function expectClose(actual: number | null, wanted: number, relative: number, what: string): void {
   expect(actual, what).not.toBeNull()

@@ -1,5 +1,6 @@
 import { spawn } from 'node:child_process'
 import { builtServer, ensureBuild, ensurePackages } from './prepare.mjs'
+import { seed } from './seed.mjs'
 
 /**
  * One command from a fresh clone to a bench with a demo team on it: installs, builds, migrates (the server does, before it serves),
@@ -22,8 +23,11 @@ const origin = await new Promise((resolve) => {
   })
 })
 
-const { seed } = await import('./seed.mjs')
-const demo = await seed(origin)
+const demo = await seed(origin).catch((error) => {
+  // The error ends this script alone; the server would go on without anybody to stop it.
+  server.kill()
+  throw error
+})
 console.log(`
 Polewright is at ${origin}
   the bench, without an account   ${origin}/

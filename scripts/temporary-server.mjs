@@ -1,4 +1,5 @@
 import { spawn } from 'node:child_process'
+import { once } from 'node:events'
 import { mkdtempSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
@@ -24,7 +25,7 @@ export async function withTemporaryServer(use) {
     })
     await use(origin)
   } finally {
-    server.kill()
+    if (server.exitCode === null && server.kill()) await once(server, 'exit')
     rmSync(folder, { recursive: true, force: true })
   }
 }

@@ -19,7 +19,7 @@ const good = { loop, controller: { form: 'gain' }, designPoint: { dampingRatio: 
 
 describe('POST /api/design/solve', () => {
   // Ogata, Modern Control Engineering, 5th ed., Example 6-1 (published.json B01; printed figures partly read, partly from memory).
-  it('answers with the gain of the magnitude condition and the readings, under the names of the contract', async () => {
+  it('answers with the gain of the magnitude condition and the readings, under the names of docs/http-contract.md', async () => {
     const answer = await client.post<DesignSolution>('/api/design/solve', {
       ...good, requirements: [{ reading: 'overshootPercent', limit: 'at-most', value: 20 }, { reading: 'gainMarginDb', limit: 'at-least', value: 20 }],
     })

@@ -106,7 +106,7 @@ describe('odd requests', () => {
     })
 
   it.each(['/api', '/api/', '/api/scenarios/%E0%A4%A', '/api/shared/%00', '/api/shared/..%2f..', '/api/scenarios?page=1e99', '/api/scenarios?search=a&search=b'])(
-    '%s is answered in the form of the contract, and is no fault of the server', async (path) => {
+    '%s is answered in the form of docs/http-contract.md, and is no fault of the server', async (path) => {
       const { status, body } = await owner.get(path)
       expect([400, 404]).toContain(status)
       expect(body).toMatchObject({ statusCode: status, message: expect.any(String) })

@@ -1,27 +1,18 @@
 import { readFileSync } from 'node:fs'
 import { createRequire } from 'node:module'
 import type { AxeResults } from 'axe-core'
-import type { Browser, Page } from 'playwright-core'
-import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import type { Page } from 'playwright-core'
+import { describe, expect, it } from 'vitest'
 import { BenchPage } from '../helpers/bench-page'
-import { desktop, openBrowser, phone, visitor } from '../helpers/browser'
+import { desktop, phone } from '../helpers/browser'
 import { nameScenario, newAccount, register, shareLink, writeComment } from '../helpers/people-pages'
-import { startServer, type RunningServer } from '../helpers/server'
+import { stage } from '../helpers/stage'
+
+const { visit } = stage()
 
 // The rules are those of axe-core for WCAG 2.2, levels A and AA.
 const axe = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8')
 const levels = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa']
-
-let server: RunningServer
-let browser: Browser
-
-beforeAll(async () => {
-  [server, browser] = await Promise.all([startServer(), openBrowser()])
-})
-afterAll(async () => {
-  await browser?.close()
-  await server?.stop()
-})
 
 /** What axe finds on the page as it stands, one line for each rule broken. */
 async function barriers(page: Page): Promise<string[]> {
@@ -45,52 +36,52 @@ describe.each([
   { theme: 'dark', screen: 'a phone', options: phone },
 ] as const)('every page, $theme, on $screen', ({ theme, options }) => {
   it('has no barrier that axe knows and does not scroll sideways', async () => {
-    const { page, leave } = await visitor(browser, server.origin, { reducedMotion: 'reduce', ...options, colorScheme: theme })
+    const { page, leave } = await visit({ reducedMotion: 'reduce', ...options, colorScheme: theme })
     const found: Record<string, string[]> = {}
-    const visit = async (name: string) => {
+    const look = async (name: string) => {
       found[name] = await barriers(page)
       if (await sideways(page) > 0) found[name].push(`scrolls sideways by ${await sideways(page)} px`)
     }
 
     const bench = await new BenchPage(page).open('/')
-    await visit('the bench')
+    await look('the bench')
     await bench.type('zeta', 'brisk')
-    await visit('the bench with an error beside a field')
+    await look('the bench with an error beside a field')
     await page.goto('/sign-in')
-    await visit('sign in')
+    await look('sign in')
     await page.getByLabel('E-mail').fill('nobody')
     await page.getByRole('button', { name: 'Sign in' }).click()
-    await visit('sign in with errors')
+    await look('sign in with errors')
 
     await register(page, newAccount('Runa Holt'))
-    await visit('an empty list of scenarios')
+    await look('an empty list of scenarios')
     await bench.open('/')
     await bench.placePoint(0.55, 0.9)
     const dialog = await nameScenario(page, { title: 'Heavier hook block' })
-    await visit('the dialog that saves')
+    await look('the dialog that saves')
     await dialog.getByRole('button', { name: 'Save', exact: true }).click()
     await page.waitForURL('**/scenarios/*')
     await bench.ready()
     const link = await shareLink(page, 'comment')
     await writeComment(page, { body: 'Is the brake released here?' })
     await page.locator('[data-test="comment"]').waitFor()
-    await visit('a scenario with a comment')
+    await look('a scenario with a comment')
     await page.getByRole('button', { name: 'Share', exact: true }).click()
     await page.getByText(/Links that work/).waitFor()
-    await visit('the dialog that shares')
+    await look('the dialog that shares')
     await page.goto('/scenarios')
     await page.getByText('Heavier hook block').first().waitFor()
-    await visit('the list of scenarios')
+    await look('the list of scenarios')
 
     await bench.open(new URL(link).pathname)
-    await visit('a shared scenario')
+    await look('a shared scenario')
 
     expect(Object.fromEntries(Object.entries(found).filter(([, lines]) => lines.length > 0))).toEqual({})
     await leave()
   })
 
   it('keeps the register page and a link that is gone within reach', async () => {
-    const someone = await visitor(browser, server.origin, { reducedMotion: 'reduce', ...options, colorScheme: theme })
+    const someone = await visit({ reducedMotion: 'reduce', ...options, colorScheme: theme })
     await someone.page.goto('/register')
     expect(await barriers(someone.page)).toEqual([])
     someone.expectFailure(404, /./)
@@ -102,7 +93,7 @@ describe.each([
 
 describe('the bench with limits broken', () => {
   it('fits every width from a phone to a wall, its tables too', async () => {
-    const { page, leave } = await visitor(browser, server.origin)
+    const { page, leave } = await visit()
     await register(page, newAccount('Runa Holt'))
     const bench = await new BenchPage(page).open('/')
     const dialog = await nameScenario(page, { title: 'A title so long that it says what is carried, by which crane, and in what weather, all at once' })

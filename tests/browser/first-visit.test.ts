@@ -1,24 +1,15 @@
-import type { Browser } from 'playwright-core'
-import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest'
+import { afterEach, beforeEach, describe, expect, it } from 'vitest'
 import { BenchPage } from '../helpers/bench-page'
-import { desktop, openBrowser, phone, visitor, type Visitor } from '../helpers/browser'
-import { startServer, type RunningServer } from '../helpers/server'
+import { desktop, phone, type Visitor } from '../helpers/browser'
+import { stage } from '../helpers/stage'
 
-let server: RunningServer
-let browser: Browser
+const { visit } = stage()
+
 let someone: Visitor
 let bench: BenchPage
 
-beforeAll(async () => {
-  [server, browser] = await Promise.all([startServer(), openBrowser()])
-})
-afterAll(async () => {
-  await browser?.close()
-  await server?.stop()
-})
-
-const begin = (options: Parameters<typeof visitor>[2] = desktop) => async () => {
-  someone = await visitor(browser, server.origin, options)
+const begin = (options: Parameters<typeof visit>[0] = desktop) => async () => {
+  someone = await visit(options)
   bench = await new BenchPage(someone.page).open('/')
 }
 afterEach(() => someone.leave())

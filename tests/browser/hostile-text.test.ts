@@ -1,23 +1,12 @@
-import type { Browser } from 'playwright-core'
-import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { describe, expect, it } from 'vitest'
 import type { ShareLink } from '#shared/schemas/link'
 import type { Scenario } from '#shared/schemas/scenario'
 import { slewDocument } from '../fixtures/document'
 import { BenchPage } from '../helpers/bench-page'
-import { openBrowser, visitor } from '../helpers/browser'
 import { newAccount, register } from '../helpers/people-pages'
-import { startServer, type RunningServer } from '../helpers/server'
+import { stage } from '../helpers/stage'
 
-let server: RunningServer
-let browser: Browser
-
-beforeAll(async () => {
-  [server, browser] = await Promise.all([startServer(), openBrowser()])
-})
-afterAll(async () => {
-  await browser?.close()
-  await server?.stop()
-})
+const { visit, origin } = stage()
 
 const run = 'window.ran=1'
 
@@ -36,9 +25,9 @@ const texts = [
 
 describe.each(texts)('a person who writes %s', (text) => {
   it('is shown it as text, wherever it comes to stand', async () => {
-    const { page, leave } = await visitor(browser, server.origin)
+    const { page, leave } = await visit()
     await register(page, { ...newAccount('Runa Holt'), name: text.slice(0, 60) })
-    const post = async <Answer>(path: string, data: object) => (await page.request.post(path, { data, headers: { origin: server.origin } })).json() as Promise<Answer>
+    const post = async <Answer>(path: string, data: object) => (await page.request.post(path, { data, headers: { origin: origin() } })).json() as Promise<Answer>
     const short = text.slice(0, 80)
     const scenario = await post<Scenario>('/api/scenarios', {
       title: text,
@@ -53,7 +42,7 @@ describe.each(texts)('a person who writes %s', (text) => {
     const link = await post<ShareLink>(`/api/scenarios/${scenario.id}/links`, { permission: 'comment' })
     await post(`/api/shared/${link.token}/comments`, { body: text, name: short })
 
-    const guest = await visitor(browser, server.origin)
+    const guest = await visit()
     for (const [someone, path] of [[page, '/scenarios'], [page, `/scenarios/${scenario.id}`], [guest.page, `/s/${link.token}`]] as const) {
       await someone.goto(path)
       if (path !== '/scenarios') await new BenchPage(someone).ready()

@@ -1,30 +1,22 @@
-import type { Browser } from 'playwright-core'
-import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest'
+import { afterEach, describe, expect, it } from 'vitest'
 import { slewDocument } from '../fixtures/document'
 import { BenchPage } from '../helpers/bench-page'
-import { openBrowser, phone, visitor, type Visitor } from '../helpers/browser'
+import { phone, type Visitor } from '../helpers/browser'
 import { commentsOf, focused, nameScenario, newAccount, register, registerHere, saveState, shareLink, signIn, signInHere, signOut, writeComment } from '../helpers/people-pages'
-import { startServer, type RunningServer } from '../helpers/server'
+import { stage } from '../helpers/stage'
 
-let server: RunningServer
-let browser: Browser
+const { visit, origin } = stage()
+
 let visitors: Visitor[] = []
 
-beforeAll(async () => {
-  [server, browser] = await Promise.all([startServer(), openBrowser()])
-})
-afterAll(async () => {
-  await browser?.close()
-  await server?.stop()
-})
 afterEach(async () => {
   const all = visitors
   visitors = []
   for (const one of all) await one.leave()
 })
 
-async function arrive(options?: Parameters<typeof visitor>[2]): Promise<Visitor> {
-  const someone = await visitor(browser, server.origin, options)
+async function arrive(options?: Parameters<typeof visit>[0]): Promise<Visitor> {
+  const someone = await visit(options)
   visitors.push(someone)
   return someone
 }
@@ -152,7 +144,7 @@ describe('a message that goes by itself', () => {
   it('stays for as long as it is pointed at or holds the focus', async () => {
     const { page } = await arrive()
     await register(page, newAccount('Runa Holt'))
-    await page.request.post('/api/scenarios', { headers: { origin: server.origin }, data: { title: 'Heavier hook block', machine: '', axis: '', document: slewDocument } })
+    await page.request.post('/api/scenarios', { headers: { origin: origin() }, data: { title: 'Heavier hook block', machine: '', axis: '', document: slewDocument } })
     await page.clock.install()
     await page.goto('/scenarios')
     await page.getByRole('button', { name: 'Delete Heavier hook block' }).click()
@@ -330,7 +322,7 @@ describe('the account forms', () => {
     await page.waitForURL('**/sign-in?to=/scenarios')
     await page.goto(`/sign-in?to=${encodeURIComponent('https://example.org/')}`)
     await signInHere(page, account)
-    await page.waitForURL(`${server.origin}/scenarios`)
+    await page.waitForURL(`${origin()}/scenarios`)
     visitors.at(-1)!.expectFailure(404, /\/scenarios\//)
     expect((await page.goto(address))!.status()).toBe(404)
     await page.getByRole('heading', { name: 'There is nothing here' }).waitFor()

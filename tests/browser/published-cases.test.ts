@@ -1,28 +1,20 @@
-import type { Browser } from 'playwright-core'
-import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest'
+import { afterEach, beforeEach, describe, expect, it } from 'vitest'
 import { BenchPage } from '../helpers/bench-page'
-import { openBrowser, visitor, type Visitor } from '../helpers/browser'
+import type { Visitor } from '../helpers/browser'
 import { expectClose, publishedCase } from '../helpers/published'
-import { startServer, type RunningServer } from '../helpers/server'
+import { stage } from '../helpers/stage'
+
+const { visit } = stage()
 
 /**
  * The main job on real input: plants of published worked examples are typed into the bench, the point is placed by hand, and the
  * figures on the screen are the exact ones. Source and provenance are in the title of each case.
  */
-let server: RunningServer
-let browser: Browser
 let someone: Visitor
 let bench: BenchPage
 
-beforeAll(async () => {
-  [server, browser] = await Promise.all([startServer(), openBrowser()])
-})
-afterAll(async () => {
-  await browser?.close()
-  await server?.stop()
-})
 beforeEach(async () => {
-  someone = await visitor(browser, server.origin)
+  someone = await visit()
   bench = await new BenchPage(someone.page).open('/')
 })
 afterEach(() => someone.leave())

@@ -79,6 +79,16 @@ export class BenchPage {
   async placePoint(dampingRatio: number, naturalFrequency: number) {
     await this.type('zeta', dampingRatio)
     await this.type('omega-n', naturalFrequency)
+    await this.settled()
+  }
+
+  /** Waits until the figures are those of the design point as it stands now. */
+  async settled() {
+    await expect.poll(async () => {
+      const [re = Number.NaN, im = Number.NaN] = (await this.page.locator('[data-test="plate"]').getAttribute('data-solved') ?? '').split(',').map(Number)
+      const [wantedRe, wantedIm] = [await this.reading('point-re'), await this.reading('point-im')]
+      return Math.hypot(re - wantedRe, im - wantedIm) <= 1e-9 * Math.hypot(wantedRe, wantedIm)
+    }, { timeout: 10_000, interval: 30 }).toBe(true)
   }
 
   /** Clicks a tick of the ray, after zooming out as far as it takes to see it clear of the grip. */

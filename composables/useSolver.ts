@@ -3,7 +3,7 @@ import type { Complex } from '#shared/numerics/complex'
 import type { DesignSolution, ResponseInput } from '#shared/control/types'
 import type { AnalyzeQuestion, SolveQuestion } from '~/stores/solution'
 import { dampingRatioOf } from '#shared/control/design-point'
-import { formOf } from '~/utils/bench/controller-forms'
+import { areGainsOf } from '~/utils/bench/controller-forms'
 import { calmDuration, type TimeFrame } from '~/utils/bench/calm-duration'
 
 /**
@@ -27,7 +27,7 @@ export function useSolver(options: { input: MaybeRefOrGetter<ResponseInput> }) {
   const analyzeQuestion = computed<AnalyzeQuestion | null>(() => {
     const { loop, controller, designPoint } = bench.document
     // An answer may lag behind a change of the form: its gains then belong to the form before.
-    const gains = store.solution && formOf(store.solution.gains) === controller.form ? store.solution.gains : null
+    const gains = store.solution && areGainsOf(controller.form, store.solution.gains) ? store.solution.gains : null
     if (controller.form !== 'gain' && gains === null) return null
     const question: AnalyzeQuestion = { loop, controller }
     const dampingRatio = rayOf(designPoint)

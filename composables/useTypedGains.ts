@@ -18,7 +18,7 @@ export function useTypedGains() {
     if (!present) return
     const gains = { ...present, [name]: value } as Gains
     const { loop, controller } = bench.document
-    if (controller.form === 'gain' && 'k' in gains && gains.k <= 0) {
+    if (!controllerForms[controller.form].reachesEveryPoint && 'k' in gains && gains.k <= 0) {
       problem.value = 'The locus is drawn for gains greater than 0.'
       return
     }

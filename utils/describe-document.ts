@@ -35,6 +35,7 @@ function describe({ title, machine, axis, document }: Described): Record<string,
     'Axis': axis || 'none',
     'Design point': describePoint(document.designPoint),
     'Plant': describePlant(document.loop.plant),
+    'Sensor': document.loop.sensor ? describePlant(document.loop.sensor) : 'none',
     'Inner rate feedback': figure(document.loop.rateFeedback ?? 0),
     'Controller': describeController(document.controller),
     'Requirements': describeRequirements(document.requirements),
@@ -47,7 +48,7 @@ function describePoint(point: ScenarioDocument['designPoint']): string {
   return `${place(point)} (damping ratio ${figure(dampingRatioOf(point))}, ${figure(abs(point))} rad/s)`
 }
 
-function describePlant(plant: Plant): string {
+export function describePlant(plant: Plant): string {
   switch (plant.form) {
     case 'expression': {
       const parameters = Object.entries(plant.parameters).map(([name, { value, unit }]) => `${name} = ${figure(value)}${unit ? ` ${unit}` : ''}`)
@@ -70,8 +71,14 @@ function describeController(controller: ScenarioDocument['controller']): string 
     case 'gain': return controller.shape ? `${label}, shape ${describeRatio(controller.shape)}` : label
     case 'lead': return `${label}, pole-zero ratio ${figure(controller.poleZeroRatio)}`
     case 'lag': return `${label}, pole-zero ratio ${figure(controller.poleZeroRatio)}, zero ${figure(controller.zero)}`
+    case 'pd': return label + filterWords(controller)
+    case 'pid': return `${label}, ${controller.thirdPole === undefined ? `Ti/Td ${figure(controller.integralToDerivativeRatio ?? NaN)}` : `third root ${figure(controller.thirdPole)} rad/s`}${filterWords(controller)}`
     default: return label
   }
+}
+
+function filterWords({ derivativeFilter }: { derivativeFilter?: number }): string {
+  return derivativeFilter === undefined ? '' : `, derivative filter ${figure(derivativeFilter)} s`
 }
 
 function describeRequirements(requirements: ScenarioDocument['requirements']): string {

@@ -1,7 +1,6 @@
 import { computed, toRaw, type ComputedRef, type ShallowRef } from 'vue'
 import type { Complex } from '#shared/numerics/complex'
 import type { DesignSolution, LoopAnalysis, Requirement } from '#shared/control/types'
-import { controllerForms, formOf } from '~/utils/bench/controller-forms'
 import type { PlaneColors } from '~/utils/plane/colors'
 import type { FlagPlace } from '~/utils/plane/flags'
 import { gripPosition } from '~/utils/plane/ray'
@@ -13,6 +12,7 @@ interface Figures {
   analysis: LoopAnalysis | null
   solution: DesignSolution | null
   requirements: Requirement[]
+  reachesEveryPoint: boolean
   stale: boolean
 }
 
@@ -45,7 +45,7 @@ export function composeScenes(
     const { solution, stale } = figures
     if (!solution || stale) return false
     const point = under.live.value
-    if (controllerForms[formOf(solution.gains)].reachesEveryPoint || under.meetings.value.some(({ re, im }) => re === point.re && im === point.im)) return true
+    if (figures.reachesEveryPoint || under.meetings.value.some(({ re, im }) => re === point.re && im === point.im)) return true
     const apart = Math.hypot(solution.designPoint.re - point.re, solution.designPoint.im - point.im)
     return solution.onLocus && apart * (view.viewport.value?.scale ?? Infinity) < 0.5
   })

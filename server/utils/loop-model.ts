@@ -1,6 +1,6 @@
 import { InvalidInputError, NoAnswerError } from '#shared/control/errors'
 import { transferFunction } from '#shared/control/transfer-function'
-import type { Controller, LoopModel, TransferFunction } from '#shared/control/types'
+import type { Controller, LoopModel, ThirdCondition, TransferFunction } from '#shared/control/types'
 import type { Complex } from '#shared/numerics/complex'
 import { fromRoots, isZero, trim } from '#shared/numerics/polynomial'
 import { limits } from '#shared/schemas/limits'
@@ -16,12 +16,13 @@ import { parseFormula } from './expression/parse-formula'
  */
 export function resolveLoop(loop: Loop, path = 'loop'): LoopModel {
   refuseUnavailable(loop, path)
-  return { plant: resolvePlant(loop.plant, `${path}.plant`), rateFeedback: loop.rateFeedback ?? 0 }
+  const sensor = loop.sensor === undefined ? {} : { sensor: resolvePlant(loop.sensor, `${path}.sensor`, 'sensor') }
+  return { plant: resolvePlant(loop.plant, `${path}.plant`), ...sensor, rateFeedback: loop.rateFeedback ?? 0 }
 }
 
 /** The controller, when its form is available. */
 export function resolveController(controller: ControllerForm, path = 'controller'): Controller {
-  if (controller.form === 'pid' || controller.form === 'lag') throw new NoAnswerError(`The form ${controller.form} is not available yet.`, `${path}.form`)
+  if (controller.form === 'pid') return { form: 'pid', derivativeFilter: controller.derivativeFilter, third: thirdCondition(controller, path) }
   if (controller.form === 'gain' && controller.shape !== undefined) {
     const shape = properRatio(controller.shape.numerator, controller.shape.denominator, `${path}.shape`, { improperAllowed: true })
     return { form: 'gain', shape }
@@ -29,9 +30,15 @@ export function resolveController(controller: ControllerForm, path = 'controller
   return controller
 }
 
+function thirdCondition({ integralToDerivativeRatio, thirdPole }: Extract<ControllerForm, { form: 'pid' }>, path: string): ThirdCondition {
+  if ((integralToDerivativeRatio === undefined) === (thirdPole === undefined)) {
+    throw new InvalidInputError(path, 'give exactly one of integralToDerivativeRatio and thirdPole: it settles the third gain')
+  }
+  return thirdPole === undefined ? { integralToDerivativeRatio: integralToDerivativeRatio! } : { pole: thirdPole }
+}
+
 function refuseUnavailable(loop: Loop, path: string) {
   const unavailable: [keyof Loop, boolean, string][] = [
-    ['sensor', loop.sensor !== undefined, 'A sensor'],
     ['deadTime', (loop.deadTime ?? 0) > 0, 'Dead time'],
     ['actuatorLimit', loop.actuatorLimit !== undefined, 'An actuator limit'],
     ['samplePeriod', loop.samplePeriod !== undefined, 'A sample period'],
@@ -41,19 +48,19 @@ function refuseUnavailable(loop: Loop, path: string) {
   }
 }
 
-function resolvePlant(plant: Plant, path: string): TransferFunction {
+function resolvePlant(plant: Plant, path: string, noun = 'plant'): TransferFunction {
   switch (plant.form) {
     case 'expression': {
       const { numerator, denominator } = parseFormula(plant.expression, plant.parameters, `${path}.expression`)
-      return properRatio(numerator, denominator, path, { numerator: `${path}.expression`, denominator: `${path}.expression` })
+      return properRatio(numerator, denominator, path, { numerator: `${path}.expression`, denominator: `${path}.expression`, noun })
     }
     case 'coefficients':
-      return properRatio(plant.numerator, plant.denominator, path)
+      return properRatio(plant.numerator, plant.denominator, path, { noun })
     case 'zeros-poles-gain': {
-      if (plant.gain === 0) throw new InvalidInputError(`${path}.gain`, 'the gain is zero: such a plant cannot be controlled')
+      if (plant.gain === 0) throw new InvalidInputError(`${path}.gain`, `the gain is zero: such a ${noun} closes no loop`)
       const zeros = closedUnderConjugation(plant.zeros, `${path}.zeros`)
       const poles = closedUnderConjugation(plant.poles, `${path}.poles`)
-      return properRatio(fromRoots(zeros, plant.gain), fromRoots(poles), path, { numerator: `${path}.zeros`, denominator: `${path}.poles` })
+      return properRatio(fromRoots(zeros, plant.gain), fromRoots(poles), path, { numerator: `${path}.zeros`, denominator: `${path}.poles`, noun })
     }
   }
 }
@@ -62,12 +69,13 @@ interface Fields {
   numerator?: string
   denominator?: string
   improperAllowed?: boolean
+  noun?: string
 }
 
 function properRatio(numerator: number[], denominator: number[], path: string, fields: Fields = {}): TransferFunction {
-  const { numerator: above = `${path}.numerator`, denominator: below = `${path}.denominator`, improperAllowed = false } = fields
+  const { numerator: above = `${path}.numerator`, denominator: below = `${path}.denominator`, improperAllowed = false, noun = 'controller' } = fields
   if (isZero(denominator)) throw new InvalidInputError(below, 'the denominator is zero')
-  if (isZero(numerator)) throw new InvalidInputError(above, 'the numerator is zero: such a plant does not answer its input')
+  if (isZero(numerator)) throw new InvalidInputError(above, `the numerator is zero: such a ${noun} does not answer its input`)
   for (const [coefficients, field] of [[numerator, above], [denominator, below]] as const) {
     if (!coefficients.every(Number.isFinite)) throw new InvalidInputError(field, 'the coefficients grow beyond what can be computed')
   }
@@ -75,7 +83,7 @@ function properRatio(numerator: number[], denominator: number[], path: string, f
   const [zeros, poles] = [ratio.numerator.length - 1, ratio.denominator.length - 1]
   if (Math.max(zeros, poles) > limits.plantOrder) throw new InvalidInputError(poles >= zeros ? below : above, `the order is beyond ${limits.plantOrder}`)
   if (zeros > poles && !improperAllowed) {
-    throw new InvalidInputError(above, `the numerator has order ${zeros}, the denominator ${poles}: such a plant is improper: it would answer before it is asked`)
+    throw new InvalidInputError(above, `the numerator has order ${zeros}, the denominator ${poles}: such a ${noun} is improper: it would answer before it is asked`)
   }
   return ratio
 }

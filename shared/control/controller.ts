@@ -5,7 +5,7 @@ import type { Controller, Gains, LoopModel, TransferFunction } from './types'
 
 /** Everything that answers to reference r, disturbance d at the plant input and the loop broken at the plant input. */
 export interface LoopFunctions {
-  /** L: the loop transfer, controller times plant; for the rate form G (kp + kr s). */
+  /** L: the loop transfer, controller times plant times sensor; for the rate form G (kp H + kr s). */
   loop: TransferFunction
   /** r to y. */
   reference: TransferFunction
@@ -19,10 +19,10 @@ export interface LoopFunctions {
   characteristic: number[]
 }
 
-/** u = (feedforward r - feedback y) / denominator; the two differ for rate feedback alone. */
+/** u = (onError (r - H y) - onOutput y) / denominator; only rate feedback takes the output without the sensor. */
 interface ControllerPolynomials {
-  feedforward: number[]
-  feedback: number[]
+  onError: number[]
+  onOutput: number[]
   denominator: number[]
 }
 
@@ -31,7 +31,10 @@ const largest = 1e120
 
 const gainNames: Record<Controller['form'], readonly string[]> = {
   gain: ['k'], pd: ['kp', 'kd'], pi: ['kp', 'ki'], rate: ['kp', 'kr'], lead: ['k', 'zero', 'pole'],
+  lag: ['k', 'zero', 'pole'], pid: ['kp', 'ki', 'kd'],
 }
+
+const unity: TransferFunction = { numerator: [1], denominator: [1] }
 
 /** The plant as the controller sees it: an inner rate feedback turns N/D into N/(D + kr s N). */
 export function effectivePlant({ plant, rateFeedback }: LoopModel): TransferFunction {
@@ -44,6 +47,12 @@ export function effectivePlant({ plant, rateFeedback }: LoopModel): TransferFunc
   return inRange({ numerator: polynomial.trim(plant.numerator), denominator })
 }
 
+/** Plant and sensor in series: what a controller that works on the measured error has to master. */
+export function measuredPlant(model: LoopModel): TransferFunction {
+  const plant = effectivePlant(model)
+  return model.sensor === undefined ? plant : inRange(series(plant, model.sensor))
+}
+
 /**
  * All transfer functions of the loop at given gains.
  * @throws InvalidInputError where the gains are not those of the form
@@ -51,41 +60,61 @@ export function effectivePlant({ plant, rateFeedback }: LoopModel): TransferFunc
  */
 export function loopFunctions(model: LoopModel, controller: Controller, gains: Gains): LoopFunctions {
   const plant = effectivePlant(model)
-  const { feedforward, feedback, denominator } = controllerPolynomials(controller, gains)
-  const loop = { numerator: polynomial.multiply(feedback, plant.numerator), denominator: polynomial.multiply(denominator, plant.denominator) }
+  const sensor = model.sensor ?? unity
+  const { onError, onOutput, denominator } = controllerPolynomials(controller, gains)
+  const loop = openLoopOf({ onError, onOutput, denominator }, plant, sensor)
   refuseImproper(loop)
   inRange(loop)
   const characteristic = polynomial.add(loop.denominator, loop.numerator)
   if (polynomial.degree(characteristic) < polynomial.degree(loop.denominator)) {
     throw new NoAnswerError('the loop is algebraic: 1 + L(s) vanishes as s grows, so no output is defined at these gains')
   }
-  const through = polynomial.multiply(feedforward, plant.numerator)
+  const ahead = polynomial.multiply(onError, sensor.denominator)
+  const through = polynomial.multiply(ahead, plant.numerator)
   const over = (numerator: number[]) => ({ numerator, denominator: characteristic })
   return {
     loop,
     reference: over(through),
-    effort: over(polynomial.multiply(feedforward, plant.denominator)),
-    disturbance: over(polynomial.multiply(denominator, plant.numerator)),
+    effort: over(polynomial.multiply(ahead, plant.denominator)),
+    disturbance: over(polynomial.multiply(polynomial.multiply(denominator, sensor.denominator), plant.numerator)),
     error: over(polynomial.add(loop.denominator, polynomial.subtract(loop.numerator, through))),
     characteristic,
   }
 }
 
+/** (onError H + onOutput) G / denominator. */
+function openLoopOf({ onError, onOutput, denominator }: ControllerPolynomials, plant: TransferFunction, sensor: TransferFunction): TransferFunction {
+  const back = polynomial.add(polynomial.multiply(onError, sensor.numerator), polynomial.multiply(onOutput, sensor.denominator))
+  return {
+    numerator: polynomial.multiply(back, plant.numerator),
+    denominator: polynomial.multiply(polynomial.multiply(denominator, sensor.denominator), plant.denominator),
+  }
+}
+
 /**
  * L0: the loop transfer without its overall gain, so that L = K L0.
- * @param gains needed by every form but `gain`. For forms with one k it is taken out; for pd, pi and rate the gains stay inside as they are, so
- *   that the overall gain is a factor on both, 1 at the present design.
+ * @param gains needed by the forms with several free gains. For forms with one k it is taken out; for pd, pi, pid and rate the gains stay inside as
+ *   they are, so that the overall gain is a factor on all of them, 1 at the present design.
  */
 export function openLoop(model: LoopModel, controller: Controller, gains?: Gains): TransferFunction {
-  if (gains === undefined && controller.form !== 'gain') {
-    throw new NoAnswerError(`the ${controller.form} form has several gains: give the present ones, the analysis runs along their overall factor`, 'gains')
-  }
-  const unit: Gains = gains === undefined || controller.form === 'gain' ? { k: 1 } : 'k' in gains ? { ...gains, k: 1 } : gains
-  const { feedback, denominator } = controllerPolynomials(controller, unit)
-  const loop = series({ numerator: feedback, denominator }, effectivePlant(model))
+  const loop = openLoopOf(controllerPolynomials(controller, unitGains(controller, gains)), effectivePlant(model), model.sensor ?? unity)
   if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to analyse', 'gains')
   refuseImproper(loop)
   return inRange(loop)
+}
+
+function unitGains(controller: Controller, gains: Gains | undefined): Gains {
+  if (controller.form === 'gain') return { k: 1 }
+  if (controller.form === 'lag') return { k: 1, ...lagPlaces(controller) }
+  if (gains === undefined) {
+    throw new NoAnswerError(`the ${controller.form} form has several gains: give the present ones, the analysis runs along their overall factor`, 'gains')
+  }
+  return 'k' in gains ? { ...gains, k: 1 } : gains
+}
+
+/** Zero and pole of a lag, both fixed by its form. */
+export function lagPlaces({ poleZeroRatio, zero }: { poleZeroRatio: number, zero: number }): { zero: number, pole: number } {
+  return { zero, pole: poleZeroRatio * zero }
 }
 
 function controllerPolynomials(controller: Controller, gains: Gains): ControllerPolynomials {
@@ -96,21 +125,32 @@ function controllerPolynomials(controller: Controller, gains: Gains): Controller
   // The check above ties the gains to the form; the compiler cannot see it.
   const given = gains as unknown as Record<string, number>
   const { k = 0, kp = 0, kd = 0, ki = 0, kr = 0, zero = 0, pole = 0 } = given
-  const both = (numerator: number[], denominator: number[]) => {
-    const trimmed = polynomial.trim(numerator)
-    return { feedforward: trimmed, feedback: trimmed, denominator }
-  }
+  const onError = (numerator: number[], denominator: number[]) => ({ onError: polynomial.trim(numerator), onOutput: [0], denominator })
   switch (controller.form) {
     case 'gain': {
       const shape = controllerShape(controller)
-      return both(polynomial.scale(shape.numerator, k), shape.denominator)
+      return onError(polynomial.scale(shape.numerator, k), shape.denominator)
     }
-    case 'pd': return both([kd, kp], [1])
-    // Without an integral gain there is no integrator; keeping s/s would show a closed-loop pole at 0 that nothing drives.
-    case 'pi': return ki === 0 ? both([kp], [1]) : both([kp, ki], [1, 0])
-    case 'lead': return both([k, -k * zero], [1, -pole])
-    case 'rate': return { feedforward: [kp], feedback: polynomial.trim([kr, kp]), denominator: [1] }
+    case 'lead':
+    case 'lag': return onError([k, -k * zero], [1, -pole])
+    case 'rate': return { onError: [kp], onOutput: polynomial.trim([kr, 0]), denominator: [1] }
+    case 'pi': return onError(...threeTerms(kp, ki, 0, 0))
+    case 'pd': return onError(...threeTerms(kp, 0, kd, controller.derivativeFilter ?? 0))
+    case 'pid': return onError(...threeTerms(kp, ki, kd, controller.derivativeFilter ?? 0))
   }
+}
+
+/**
+ * kp + ki/s + kd s/(filter s + 1) as one fraction. A term whose gain is zero leaves no pole behind: keeping s/s would show a closed-loop root that
+ * nothing drives.
+ */
+function threeTerms(kp: number, ki: number, kd: number, filter: number): [numerator: number[], denominator: number[]] {
+  const integrator = ki === 0 ? [1] : [1, 0]
+  const lag = kd === 0 || filter === 0 ? [1] : [filter, 1]
+  const proportional = polynomial.scale(polynomial.multiply(integrator, lag), kp)
+  const integral = polynomial.scale(lag, ki)
+  const derivative = polynomial.scale(polynomial.multiply(integrator, [1, 0]), kd)
+  return [polynomial.add(polynomial.add(proportional, integral), derivative), polynomial.multiply(integrator, lag)]
 }
 
 /** C0 of the `gain` form; 1 where none is given. */

@@ -2,7 +2,7 @@ import * as complex from '../numerics/complex'
 import type { Complex } from '../numerics/complex'
 import { evaluateAccurately } from '../numerics/compensated'
 import * as polynomial from '../numerics/polynomial'
-import { roots } from '../numerics/roots'
+import { realRootsOfQuadratic } from '../numerics/real-roots'
 import { toDegrees, wrapAngle } from './angle'
 import { NoAnswerError } from './errors'
 import type { Gains, TransferFunction } from './types'
@@ -26,7 +26,7 @@ export function placeLead(plant: TransferFunction, ratio: number, s: Complex): G
   }
   const size = complex.abs(denominator)
   const h = complex.multiply(complex.scale(numerator, 1 / size), complex.conjugate(complex.scale(denominator, 1 / size)))
-  const zeros = realRootsOrNone(s.im === 0 ? doubleRootCondition(plant, ratio, s.re) : angleCondition(h, ratio, s))
+  const zeros = realRootsOfQuadratic(s.im === 0 ? doubleRootCondition(plant, ratio, s.re) : angleCondition(h, ratio, s), coincidence)
   const solutions = zeros
     .filter(z => z > 0)
     .map(z => ({ z, factor: complex.divide({ re: s.re + z, im: s.im }, { re: s.re + ratio * z, im: s.im }) }))
@@ -37,12 +37,6 @@ export function placeLead(plant: TransferFunction, ratio: number, s: Complex): G
   const distinct = solutions.filter((gains, i) => i === 0 || Math.abs(gains.zero - solutions[i - 1]!.zero) > coincidence * Math.abs(gains.zero))
   if (distinct.length === 0) throw new NoAnswerError(whyNone(h, ratio, s), 'designPoint')
   return distinct
-}
-
-/** Where the ratio gives just the phase that is needed, both zeros fall together and rounding may part them into a complex pair. */
-function realRootsOrNone(quadratic: number[]): number[] {
-  if (polynomial.isZero(quadratic) || !quadratic.every(Number.isFinite)) return []
-  return roots(quadratic).filter(({ re, im }) => im >= 0 && im <= coincidence * Math.abs(re)).map(({ re }) => re)
 }
 
 function angleCondition(h: Complex, ratio: number, s: Complex): number[] {

@@ -1,11 +1,10 @@
 import * as complex from '../numerics/complex'
 import type { Complex } from '../numerics/complex'
-import { evaluateAccurately } from '../numerics/compensated'
-import * as polynomial from '../numerics/polynomial'
 import { wrapAngle } from './angle'
-import { effectivePlant, openLoop } from './controller'
+import { effectivePlant, lagPlaces, measuredPlant, openLoop } from './controller'
 import { NoAnswerError } from './errors'
 import { placeLead } from './lead'
+import { placeProportionalDerivative, placeProportionalIntegral, placeRateFeedback, placeThreeTerms } from './three-terms'
 import type { Controller, Gains, LoopModel, TransferFunction } from './types'
 import { valuesAt } from './values-at'
 
@@ -43,26 +42,14 @@ export function placeGains(model: LoopModel, controller: Controller, designPoint
 
 function place(model: LoopModel, controller: Controller, designPoint: Complex): Placement {
   switch (controller.form) {
-    case 'gain': return placeOneGain(openLoop(model, controller), designPoint)
-    case 'lead': return reached(placeLead(effectivePlant(model), controller.poleZeroRatio, designPoint))
-    case 'pi': {
-      const { kp, ki } = placeProportionalIntegral(effectivePlant(model), designPoint)
-      return reached([{ kp, ki: orNothing(ki, kp, 1 / complex.abs(designPoint)) }])
-    }
-    case 'pd': {
-      const { constant, slope } = lineThrough(effectivePlant(model), designPoint)
-      return reached([{ kp: constant, kd: orNothing(slope, constant, complex.abs(designPoint)) }])
-    }
-    case 'rate': {
-      const { constant, slope } = lineThrough(effectivePlant(model), designPoint)
-      return reached([{ kp: constant, kr: orNothing(slope, constant, complex.abs(designPoint)) }])
-    }
+    case 'gain': return placeOneGain(openLoop(model, controller), designPoint, k => ({ k }))
+    case 'lag': return placeOneGain(openLoop(model, controller), designPoint, k => ({ k, ...lagPlaces(controller) }))
+    case 'lead': return reached(placeLead(measuredPlant(model), controller.poleZeroRatio, designPoint))
+    case 'pi': return reached([placeProportionalIntegral(measuredPlant(model), designPoint)])
+    case 'pd': return reached([placeProportionalDerivative(measuredPlant(model), controller.derivativeFilter ?? 0, designPoint)])
+    case 'pid': return reached(placeThreeTerms(measuredPlant(model), controller.derivativeFilter ?? 0, controller.third, designPoint))
+    case 'rate': return reached([placeRateFeedback(effectivePlant(model), model.sensor ?? { numerator: [1], denominator: [1] }, designPoint)])
   }
-}
-
-/** What rounding leaves of a gain that should be 0: where the other gain does all the work, the sign of a last digit is no advice. */
-function orNothing(gain: number, other: number, weight: number): number {
-  return Math.abs(gain) * weight <= 1e-13 * Math.abs(other) ? 0 : gain
 }
 
 function reached([gains, ...alternatives]: Gains[]): Placement {
@@ -70,54 +57,14 @@ function reached([gains, ...alternatives]: Gains[]): Placement {
 }
 
 /** K = 1/|L0(s)|; leftover angle arg L0(s) - pi. An open-loop pole is reached with no gain at all. */
-function placeOneGain(open: TransferFunction, s: Complex): Placement {
+function placeOneGain(open: TransferFunction, s: Complex, gainsOf: (k: number) => Gains): Placement {
   const { numerator, denominator } = valuesAt(open, s)
-  if (complex.abs(denominator) === 0) return { gains: { k: 0 }, alternatives: [], leftoverAngle: 0, onLocus: true }
+  if (complex.abs(denominator) === 0) return { gains: gainsOf(0), alternatives: [], leftoverAngle: 0, onLocus: true }
   const leftoverAngle = wrapAngle(complex.arg(numerator) - complex.arg(denominator) - Math.PI)
   return {
-    gains: { k: complex.abs(denominator) / complex.abs(numerator) },
+    gains: gainsOf(complex.abs(denominator) / complex.abs(numerator)),
     alternatives: [],
     leftoverAngle,
     onLocus: Math.abs(leftoverAngle) < onLocusTolerance,
   }
-}
-
-/**
- * Real numbers with constant + slope s = -D(s)/N(s) at the point: the gains of a PD or of rate feedback. At a real point the line is the
- * tangent of -D/N there, which makes the point a double root.
- */
-function lineThrough(plant: TransferFunction, s: Complex): { constant: number, slope: number } {
-  if (s.im === 0) {
-    const { value, slope } = wantedOnRealAxis(plant, s.re)
-    return { constant: value - slope * s.re, slope }
-  }
-  const wanted = wantedController(plant, s)
-  const slope = wanted.im / s.im
-  return { constant: wanted.re - slope * s.re, slope }
-}
-
-/** kp + ki/s = -D/N; at a real point in value and slope. */
-function placeProportionalIntegral(plant: TransferFunction, s: Complex): { kp: number, ki: number } {
-  const square = s.re * s.re + s.im * s.im
-  if (square === 0) throw new NoAnswerError('the design point lies on the integrator of the PI controller, where no gains put a root', 'designPoint')
-  if (s.im === 0) {
-    const { value, slope } = wantedOnRealAxis(plant, s.re)
-    return { kp: value + slope * s.re, ki: -slope * square }
-  }
-  const wanted = wantedController(plant, s)
-  const ki = -wanted.im * square / s.im
-  return { kp: wanted.re - ki * s.re / square, ki }
-}
-
-/** -D(s)/N(s): what the controller must be worth at s. */
-function wantedController(plant: TransferFunction, s: Complex): Complex {
-  const { numerator, denominator } = valuesAt(plant, s)
-  return complex.negate(complex.divide(denominator, numerator))
-}
-
-/** -D/N and its slope at a real place. */
-function wantedOnRealAxis(plant: TransferFunction, x: number): { value: number, slope: number } {
-  const { numerator: { re: n }, denominator: { re: d } } = valuesAt(plant, { re: x, im: 0 })
-  const slopeOf = (p: number[]) => evaluateAccurately(polynomial.derivative(p), { re: x, im: 0 }).re
-  return { value: -d / n, slope: (d * slopeOf(plant.numerator) - n * slopeOf(plant.denominator)) / (n * n) }
 }

@@ -6,19 +6,28 @@ export interface TransferFunction {
   denominator: number[]
 }
 
-/** The loop around a controller, resolved to rational form. `rateFeedback` is a fixed inner gain on s*y around the plant. */
+/**
+ * The loop around a controller, resolved to rational form. `rateFeedback` is a fixed inner gain on s*y around the plant; the sensor stands in the
+ * outer feedback path, unity where it is absent.
+ */
 export interface LoopModel {
   plant: TransferFunction
+  sensor?: TransferFunction
   rateFeedback: number
 }
 
 /** The controller forms; the meaning of each field is fixed by docs/http-contract.md. */
 export type Controller =
   | { form: 'gain', shape?: TransferFunction }
-  | { form: 'pd' }
+  | { form: 'pd', derivativeFilter?: number }
   | { form: 'pi' }
   | { form: 'rate' }
   | { form: 'lead', poleZeroRatio: number }
+  | { form: 'lag', poleZeroRatio: number, zero: number }
+  | { form: 'pid', derivativeFilter?: number, third: ThirdCondition }
+
+/** What settles the third gain of a PID: the ratio of integral to derivative time, or the place (rad/s) of a real closed-loop root. */
+export type ThirdCondition = { integralToDerivativeRatio: number } | { pole: number }
 
 /** Gains of a controller form. `kr` is a rate feedback gain; `zero` and `pole` are places in the s-plane (negative when stable). */
 export type Gains =
@@ -26,6 +35,7 @@ export type Gains =
   | { kp: number, kd: number }
   | { kp: number, ki: number }
   | { kp: number, kr: number }
+  | { kp: number, ki: number, kd: number }
   | { k: number, zero: number, pole: number }
 
 export type ReadingName =

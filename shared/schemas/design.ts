@@ -31,6 +31,7 @@ export const gainsSchema = z.union([
   z.strictObject({ kp: finiteNumber, kd: finiteNumber }),
   z.strictObject({ kp: finiteNumber, ki: finiteNumber }),
   z.strictObject({ kp: finiteNumber, kr: finiteNumber }),
+  z.strictObject({ kp: finiteNumber, ki: finiteNumber, kd: finiteNumber }),
   z.strictObject({ k: finiteNumber, zero: finiteNumber, pole: finiteNumber }),
 ])
 

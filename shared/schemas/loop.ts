@@ -56,15 +56,19 @@ export const loopSchema = z.strictObject({
   samplePeriod: z.number().positive().optional(),
 })
 
+/** Seconds; absent: an ideal derivative. */
+const derivativeFilter = z.number().positive('a filter time is greater than 0; leave it out for an ideal derivative').optional()
+
 export const controllerSchema = z.discriminatedUnion('form', [
   z.strictObject({ form: z.literal('gain'), shape: transferFunctionSchema.optional() }),
-  z.strictObject({ form: z.literal('pd') }),
+  z.strictObject({ form: z.literal('pd'), derivativeFilter }),
   z.strictObject({ form: z.literal('pi') }),
   z.strictObject({ form: z.literal('rate') }),
   z.strictObject({
     form: z.literal('pid'),
+    derivativeFilter,
     integralToDerivativeRatio: z.number().positive().optional(),
-    thirdPole: finiteNumber.optional(),
+    thirdPole: z.number().lt(0, 'the third pole is negative').optional(),
   }),
   z.strictObject({ form: z.literal('lead'), poleZeroRatio: z.number().gt(1, 'the pole-zero ratio of a lead is greater than 1') }),
   z.strictObject({

@@ -109,7 +109,7 @@ describe('bad input', () => {
     ['too many samples', { ...good, response: { samples: 2001 } }, 400, 'response.samples'],
     ['an unknown reading', { ...good, requirements: [{ reading: 'colour', limit: 'at-most', value: 1 }] }, 400, 'requirements.0.reading'],
     ['too many requirements', { ...good, requirements: Array(17).fill({ reading: 'riseTime', limit: 'at-most', value: 1 }) }, 400, 'requirements'],
-    ['a form that is not available yet', { ...good, controller: { form: 'pid', thirdPole: -3 } }, 422, 'controller.form'],
+    ['a PID with two third conditions', { ...good, controller: { form: 'pid', thirdPole: -3, integralToDerivativeRatio: 4 } }, 400, 'controller'],
     ['dead time', { ...good, loop: { ...loop, deadTime: 0.1 } }, 422, 'loop.deadTime'],
     ['a lead that cannot reach the point', { ...good, controller: { form: 'lead', poleZeroRatio: 1.0001 }, designPoint: { re: -0.1, im: 9 } }, 422, ''],
   ])('%s is refused by field and reason', async (_what, body, status, path) => {

@@ -33,7 +33,7 @@ describe(titled('B06'), () => {
       s: pair(plain.point),
       third: realRootsAt(model, { form: 'gain' }, { k: plain.gain })[0]!,
       K_PI: farthest(shaped([1, 0.1], [1, 0])).gain,
-      K_lag: farthest(shaped([1, 0.111], [1, 0.01])).gain,
+      K_lag: farthest({ form: 'lag', zero: -0.111, poleZeroRatio: 0.01 / 0.111 }).gain,
     }
     holdAll(c, figures)
   })
@@ -106,7 +106,7 @@ describe(titled('B10'), () => {
     const figures = {
       s0: pair(before.find(root => root.im > 0)!),
       third0: before.find(root => root.im === 0)!.re,
-      Kc: gainAt(model, shaped([1, 0.05], [1, 0.005]), { re: -0.31, im: 0.55 }).k,
+      Kc: gainAt(model, { form: 'lag', zero: -0.05, poleZeroRatio: 0.1 }, { re: -0.31, im: 0.55 }).k,
     }
     holdAll(c, figures)
   })

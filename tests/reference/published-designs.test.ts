@@ -111,7 +111,7 @@ describe('published designs', () => {
     // Kp (1 + 1/(Ti s) + Td s) at the settings as printed, for which the figures were recomputed: the rule's, then the book's two retunings.
     const settings = [{ Kp: 18, Ti: 1.405, Td: 0.35124 }, { Kp: 18, Ti: 3.077, Td: 0.7692 }, { Kp: 39.42, Ti: 3.077, Td: 0.7692 }]
     const solutions = settings.map(({ Kp, Ti, Td }) =>
-      solveDesign(plant, { form: 'gain', shape: { numerator: [Td, 1, 1 / Ti], denominator: [1, 0] } }, { gains: { k: Kp } }).readings)
+      solveDesign(plant, { form: 'pid', third: { integralToDerivativeRatio: Ti / Td } }, { gains: { kp: Kp, ki: Kp / Ti, kd: Kp * Td } }).readings)
     e02.holds('PO_percent', solutions.map(one => one.overshootPercent))
     e02.holds('ts2', solutions.map(one => one.settlingTime))
   })

@@ -8,6 +8,7 @@ const words: readonly [prefix: string, said: string][] = [
   ['loop.plant.poles', 'Poles'],
   ['loop.plant.gain', 'Gain of the plant'],
   ['loop.plant', 'Plant'],
+  ['loop.sensor', 'Sensor'],
   ['loop.rateFeedback', 'Rate feedback'],
   ['controller.shape', 'Controller shape'],
   ['controller', 'Controller'],

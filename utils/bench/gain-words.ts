@@ -13,8 +13,8 @@ const meanings: Record<string, string> = {
   kd: 'derivative gain',
   ki: 'integral gain',
   kr: 'rate feedback gain',
-  zero: 'of the lead',
-  pole: 'of the lead',
+  zero: 'of the controller',
+  pole: 'of the controller',
 }
 
 /** The gains in the order in which they are read. */
@@ -22,7 +22,7 @@ export function namedGains(gains: Gains): NamedGain[] {
   return Object.entries(gains).map(([name, value]) => ({ name, value: value as number, meaning: meanings[name]! }))
 }
 
-/** What a negative gain asks for, in words; null where none is negative. Zero and pole of a lead are places, not gains. */
+/** What a negative gain asks for, in words; null where none is negative. Zero and pole of a lead or lag are places, not gains. */
 export function negativeGainSentence(gains: Gains): string | null {
   const negative = namedGains(gains).filter(({ name, value }) => value < 0 && name !== 'zero' && name !== 'pole').map(({ name }) => name)
   if (negative.length === 0) return null

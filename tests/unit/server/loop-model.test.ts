@@ -48,7 +48,7 @@ describe('a loop of a request', () => {
 
   it.each([
     [{ plant, deadTime: 0.1 }, 'loop.deadTime'], [{ plant, samplePeriod: 0.1 }, 'loop.samplePeriod'],
-    [{ plant, actuatorLimit: 1 }, 'loop.actuatorLimit'], [{ plant, sensor: plant }, 'loop.sensor'],
+    [{ plant, actuatorLimit: 1 }, 'loop.actuatorLimit'],
   ])('says what is not available yet', (loop, path) => {
     const error = thrown(() => resolveLoop(asLoop(loop)))
     expect(error).toBeInstanceOf(NoAnswerError)
@@ -59,7 +59,19 @@ describe('a loop of a request', () => {
     expect(resolveLoop(asLoop({ plant, deadTime: 0 })).rateFeedback).toBe(0)
   })
 
-  it.each(['pid', 'lag'])('says that the form %s is not available yet', (form) => {
-    expect(thrown(() => resolveController({ form } as ControllerForm))).toMatchObject({ name: 'NoAnswerError', path: 'controller.form' })
+  it('takes a sensor in any form of a plant, and names its fields', () => {
+    const sensor = { form: 'zeros-poles-gain', zeros: [], poles: [{ re: -50, im: 0 }], gain: 50 }
+    expect(resolveLoop(asLoop({ plant, sensor })).sensor).toEqual({ numerator: [50], denominator: [1, 50] })
+    expect(thrown(() => resolveLoop(asLoop({ plant, sensor: { ...plant, numerator: [1, 0, 0, 0] } })))).toMatchObject({
+      path: 'loop.sensor.numerator', message: expect.stringContaining('such a sensor is improper'),
+    })
+  })
+
+  it('takes one third condition of a PID, no more and no less', () => {
+    expect(resolveController({ form: 'pid', integralToDerivativeRatio: 4 })).toEqual({ form: 'pid', derivativeFilter: undefined, third: { integralToDerivativeRatio: 4 } })
+    expect(resolveController({ form: 'pid', thirdPole: -3, derivativeFilter: 0.1 })).toEqual({ form: 'pid', derivativeFilter: 0.1, third: { pole: -3 } })
+    for (const wrong of [{ form: 'pid' }, { form: 'pid', thirdPole: -3, integralToDerivativeRatio: 4 }] as ControllerForm[]) {
+      expect(thrown(() => resolveController(wrong))).toMatchObject({ name: 'InvalidInputError', path: 'controller' })
+    }
   })
 })

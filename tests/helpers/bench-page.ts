@@ -140,7 +140,7 @@ export class BenchPage {
     await this.type('formula', formula)
   }
 
-  async chooseController(form: 'gain' | 'pd' | 'pi' | 'rate' | 'lead') {
+  async chooseController(form: 'gain' | 'pd' | 'pi' | 'pid' | 'rate' | 'lead' | 'lag') {
     await this.page.locator('[data-test="controller-form"]').selectOption(form)
   }
 }

@@ -13,6 +13,11 @@ const requirements = [
   { reading: 'phaseMarginDeg', limit: 'at-least', value: 50 },
 ]
 
+const sixRequirements = [
+  ...requirements, { reading: 'gainMarginDb', limit: 'at-least', value: 8 }, { reading: 'sensitivityPeak', limit: 'at-most', value: 1.8 },
+  { reading: 'steadyStateErrorRamp', limit: 'at-most', value: 3 },
+]
+
 /** Median and spread of a solve (400 samples, all readings, three requirements) and of an analysis, by order of the plant. */
 export async function benchEngine() {
   const engine = await loadEngine()
@@ -26,13 +31,18 @@ export async function benchEngine() {
     const loop = loopOfOrder(order)
     rows.push({ what: `analyze, order ${order}`, ...time(n => engine.analyzeLoop(loop, { form: 'gain' }, { dampingRatio: 0.3 + (n % 40) / 100 })) })
   }
+  for (const order of [3, 6, 12, 20]) {
+    const loop = loopOfOrder(order)
+    const { gains } = engine.solveDesign(loop, { form: 'gain' }, { designPoint: { re: -0.4, im: 0.6 } })
+    rows.push({ what: `gain window, order ${order}`, ...time(() => engine.gainWindow(loop, { form: 'gain' }, gains, sixRequirements), { warm: 3, timed: 30 }) })
+  }
   return rows
 }
 
-function time(work) {
-  for (let n = 0; n < rounds.warm; n += 1) work(n)
+function time(work, { warm, timed } = rounds) {
+  for (let n = 0; n < warm; n += 1) work(n)
   const times = []
-  for (let n = 0; n < rounds.timed; n += 1) {
+  for (let n = 0; n < timed; n += 1) {
     const started = performance.now()
     work(n)
     times.push(performance.now() - started)
@@ -46,7 +56,7 @@ async function loadEngine() {
   const outfile = join(folder, 'engine.mjs')
   await build({
     stdin: {
-      contents: `export { solveDesign } from './shared/control/solve'; export { analyzeLoop } from './shared/control/analyze'`, resolveDir: root,
+      contents: `export { solveDesign } from './shared/control/solve'; export { analyzeLoop } from './shared/control/analyze'; export { gainWindow } from './shared/control/gain-window'`, resolveDir: root,
     },
     bundle: true, format: 'esm', platform: 'node', target: 'node20', outfile, logLevel: 'warning',
   })

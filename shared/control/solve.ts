@@ -82,7 +82,8 @@ function isFinite({ gains, closedLoopPoles, closedLoopZeros, response, estimate 
   return numbers.every(Number.isFinite) && response.output.every(Number.isFinite) && response.effort.every(Number.isFinite)
 }
 
-function placementOf(model: LoopModel, controller: Controller, target: DesignTarget): Placement {
+/** The placement of a design target: for gains as they are, those gains. */
+export function placementOf(model: LoopModel, controller: Controller, target: DesignTarget): Placement {
   if ('gains' in target) {
     if (!Object.values(target.gains).every(Number.isFinite)) throw new InvalidInputError('gains', 'gains are finite numbers')
     return { gains: target.gains, alternatives: [], leftoverAngle: 0, onLocus: true }

@@ -55,6 +55,18 @@ export interface Verdict extends Requirement {
   met: boolean
 }
 
+/** From and to. */
+export type Interval = [number, number]
+
+/** Factors on the present overall gain, between 1e-3 and 1e3. */
+export interface GainWindow {
+  /** Where every requirement is met. */
+  window: Interval[]
+  byRequirement: (Requirement & { intervals: Interval[] })[]
+  /** The readings whose requirements end the window about the present gain; null: none does. */
+  tightest: { below: ReadingName | null, above: ReadingName | null }
+}
+
 export interface LoopAnalysis {
   /** L0: the loop transfer without its overall gain. */
   openLoop: {

@@ -1,6 +1,7 @@
 import { readFileSync } from 'node:fs'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { DesignSolution, LoopAnalysis } from '#shared/control/types'
+import type { GainWindow } from '#shared/control/types'
 import type { ErrorBody } from '#shared/schemas/errors'
 import { Client } from '../helpers/client'
 import { startServer, type RunningServer } from '../helpers/server'
@@ -137,7 +138,19 @@ describe('bad input', () => {
     expect([answer.status, answer.body.data?.issues?.[0]?.path]).toEqual([400, 'designPoint.dampingRatio'])
   })
 
-  it('says that the gain window is not available yet', async () => {
-    expect((await client.post<ErrorBody>('/api/design/gain-window', good)).body).toMatchObject({ statusCode: 422, message: expect.stringContaining('not available yet') })
+  it('tells the factors on the gain for which the requirements are met', async () => {
+    // 1/(s² + 2 s): damping ratio 1/sqrt(k).
+    const zeta = Math.log(10) / Math.hypot(Math.PI, Math.log(10))
+    const { status, body } = await client.post<GainWindow>('/api/design/gain-window', {
+      loop: { plant: { form: 'coefficients', numerator: [1], denominator: [1, 2, 0] } }, controller: { form: 'gain' }, designPoint: { re: -1, im: 1 },
+      requirements: [{ reading: 'overshootPercent', limit: 'at-most', value: 10 }],
+    })
+    expect(status).toBe(200)
+    expect(body.window).toHaveLength(1)
+    expect(body.window[0]![0]).toBe(1e-3)
+    expect(Math.abs(body.window[0]![1] * 2 * zeta ** 2 - 1)).toBeLessThan(1e-6)
+    expect(body.byRequirement[0]).toMatchObject({ reading: 'overshootPercent', intervals: body.window })
+    expect(body.tightest).toEqual({ below: null, above: 'overshootPercent' })
+    expect((await client.post<ErrorBody>('/api/design/gain-window', { ...good, loop: {} })).status).toBe(400)
   })
 })

@@ -1,7 +1,17 @@
-import { NoAnswerError } from '#shared/control/errors'
-import { limitCompute } from '../../utils/limits'
+import { gainWindow } from '#shared/control/gain-window'
+import { placementOf } from '#shared/control/solve'
+import { solveBodySchema } from '#shared/schemas/design'
+import { readValidated } from '../../utils/body'
+import { designTarget } from '../../utils/design-target'
+import { compute, limitCompute } from '../../utils/limits'
+import { resolveController, resolveLoop } from '../../utils/loop-model'
 
 export default defineEventHandler(async (event) => {
   await limitCompute(event)
-  throw new NoAnswerError('The gain window is not available yet.')
+  const body = await readValidated(event, solveBodySchema)
+  return compute(event, () => {
+    const [model, controller] = [resolveLoop(body.loop), resolveController(body.controller)]
+    const { gains } = placementOf(model, controller, designTarget(body))
+    return gainWindow(model, controller, gains, body.requirements, body.response?.settlingBandPercent)
+  })
 })

@@ -1,0 +1,165 @@
+import { roots } from '../numerics/roots'
+import { loopFunctions, openLoop } from './controller'
+import { NoAnswerError } from './errors'
+import { imaginaryAxisCrossings } from './locus/crossings'
+import { readAll } from './readings'
+import { respondTo } from './response/response'
+import { diesOut } from './stability'
+import type { Controller, Gains, GainWindow, Interval, LoopModel, ReadingName, Requirement } from './types'
+import { judge } from './verdicts'
+
+/** Factors on the present gain within which the window is looked for. */
+const domain: Interval = [1e-3, 1e3]
+/** Samples per decade of the gain before any refinement. */
+const perDecade = 8
+/** Edges are found to this, relative. */
+const edgeAccuracy = 1e-6
+/** Levels of halving where a reading comes near its limit between samples and turns back. */
+const deepest = 6
+
+interface Sample {
+  /** ln of the factor. */
+  x: number
+  /** How far each reading is from its limit, positive where it is met; infinite where the verdict has no figure to it. */
+  room: number[]
+}
+
+/**
+ * For each requirement the factors on the overall gain for which it is met, and their intersection: how much room there is about the present gain.
+ *
+ * Sampled on a logarithmic scale between the gains at which stability changes (known exactly), refined where a reading turns back near its limit,
+ * every edge bisected to 1e-6.
+ * @param gains the present ones; all are multiplied (zero and pole of a lead or lag stay)
+ */
+export function gainWindow(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], settlingBandPercent = 2): GainWindow {
+  const sampleAt = (x: number): Sample => ({ x, room: roomAt(model, controller, scaled(gains, Math.exp(x)), requirements, settlingBandPercent) })
+  const samples = refineTurns(firstPlaces(model, controller, gains).map(sampleAt), sampleAt)
+  const byRequirement = requirements.map((requirement, index) => ({ ...requirement, intervals: intervalsOf(samples, index, sampleAt) }))
+  const window = byRequirement.reduce<Interval[]>((common, { intervals }) => intersect(common, intervals), [domain])
+  return { window, byRequirement, tightest: tightestOf(window, byRequirement) }
+}
+
+/** The gains with the overall gain multiplied. */
+export function scaled(gains: Gains, factor: number): Gains {
+  return Object.fromEntries(Object.entries(gains).map(([name, value]) => [name, name === 'zero' || name === 'pole' ? value : value as number * factor])) as unknown as Gains
+}
+
+function roomAt(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], settlingBandPercent: number): number[] {
+  try {
+    const functions = loopFunctions(model, controller, gains)
+    const poles = roots(functions.characteristic)
+    const stable = poles.every(diesOut)
+    const readings = readAll(functions, poles, stable, respondTo('reference-step', functions, poles), { amplitude: 1, settlingBandPercent })
+    return judge(requirements, readings, poles, stable).map(({ actual, limit, value, met }) => {
+      const room = actual === null ? Infinity : Math.abs(limit === 'at-most' ? value - actual : actual - value)
+      return met ? room : -room
+    })
+  }
+  catch (error) {
+    // An algebraic loop, or numbers out of range: nothing is met there.
+    if (error instanceof NoAnswerError || error instanceof RangeError) return requirements.map(() => -Infinity)
+    throw error
+  }
+}
+
+/** An even grid in ln of the factor, with a place just on either side of each gain at which stability changes. */
+function firstPlaces(model: LoopModel, controller: Controller, gains: Gains): number[] {
+  const [from, to] = [Math.log(domain[0]), Math.log(domain[1])]
+  const count = Math.round((to - from) / Math.LN10 * perDecade)
+  const places = Array.from({ length: count + 1 }, (_, n) => from + (to - from) * n / count)
+  const present = 'k' in gains ? gains.k : 1
+  for (const { gain } of crossingsOf(model, controller, gains)) {
+    const x = Math.log(gain / present)
+    if (x > from && x < to) places.push(x - 1e-9, x + 1e-9)
+  }
+  return [...places, 0].sort((a, b) => a - b)
+}
+
+function crossingsOf(model: LoopModel, controller: Controller, gains: Gains) {
+  try {
+    return imaginaryAxisCrossings(openLoop(model, controller, gains))
+  }
+  catch (error) {
+    if (error instanceof NoAnswerError || error instanceof RangeError) return []
+    throw error
+  }
+}
+
+/** Halves the pieces beside a sample at which some reading is nearer to its limit than at both neighbours, all on one side. */
+function refineTurns(samples: Sample[], sampleAt: (x: number) => Sample): Sample[] {
+  let refined = samples
+  for (let level = 0; level < deepest; level++) {
+    const halves = new Set<number>()
+    for (let i = 1; i + 1 < refined.length; i++) {
+      const [before, here, after] = [refined[i - 1]!, refined[i]!, refined[i + 1]!]
+      if (!here.room.some((room, n) => turnsNear(before.room[n]!, room, after.room[n]!))) continue
+      halves.add((before.x + here.x) / 2)
+      halves.add((here.x + after.x) / 2)
+    }
+    if (halves.size === 0) break
+    refined = [...refined, ...[...halves].map(sampleAt)].sort((a, b) => a.x - b.x)
+  }
+  return refined
+}
+
+function turnsNear(before: number, here: number, after: number): boolean {
+  if (!Number.isFinite(here) || Math.sign(before) !== Math.sign(here) || Math.sign(after) !== Math.sign(here)) return false
+  const [a, b, c] = [Math.abs(before), Math.abs(here), Math.abs(after)]
+  // A parabola through the three would have to reach the limit for the refinement to be worth while.
+  return b < a && b < c && b < (a - b) + (c - b)
+}
+
+function intervalsOf(samples: Sample[], index: number, sampleAt: (x: number) => Sample): Interval[] {
+  const isMet = ({ room }: Sample) => room[index]! >= 0
+  const edge = (broken: Sample, met: Sample) => Math.exp(edgeBetween(broken, met, index, sampleAt))
+  const intervals: Interval[] = []
+  let from: number | null = null
+  samples.forEach((sample, i) => {
+    const before = samples[i - 1]
+    if (isMet(sample) && from === null) from = before ? edge(before, sample) : domain[0]
+    if (!isMet(sample) && from !== null && before) {
+      intervals.push([from, edge(sample, before)])
+      from = null
+    }
+  })
+  if (from !== null) intervals.push([from, domain[1]])
+  return intervals
+}
+
+/**
+ * The edge between a sample at which the requirement is broken and one at which it is met, on the met side. The secant through the two leads there
+ * fast; every third step halves, since a reading may jump (a settling time does, by one swing of the response).
+ */
+function edgeBetween(brokenStart: Sample, metStart: Sample, index: number, sampleAt: (x: number) => Sample): number {
+  let [broken, met] = [brokenStart, metStart]
+  const close = edgeAccuracy / 2
+  for (let step = 1; Math.abs(met.x - broken.x) > close; step++) {
+    const way = met.x - broken.x
+    const [lacking, spare] = [-broken.room[index]!, met.room[index]!]
+    const share = step % 3 === 0 || !Number.isFinite(lacking) || !Number.isFinite(spare) ? 0.5 : lacking / (lacking + spare)
+    // Never onto an end: a step as short as the accuracy asked for closes the bracket once the secant has arrived.
+    const least = 0.45 * close / Math.abs(way)
+    const here = sampleAt(broken.x + way * Math.min(1 - least, Math.max(least, share)))
+    if (here.room[index]! >= 0) met = here
+    else broken = here
+  }
+  return met.x
+}
+
+function intersect(a: readonly Interval[], b: readonly Interval[]): Interval[] {
+  return a.flatMap(([from, to]) => b.flatMap(([start, end]): Interval[] => {
+    const both: Interval = [Math.max(from, start), Math.min(to, end)]
+    return both[0] < both[1] ? [both] : []
+  }))
+}
+
+/** The requirements that end the room about the present gain (or the nearest room), below and above; null where the domain ends it. */
+function tightestOf(window: readonly Interval[], byRequirement: GainWindow['byRequirement']): GainWindow['tightest'] {
+  const distance = ([from, to]: Interval) => from > 1 ? Math.log(from) : to < 1 ? -Math.log(to) : 0
+  const [room] = [...window].sort((a, b) => distance(a) - distance(b))
+  if (!room) return { below: null, above: null }
+  const ending = (side: 0 | 1): ReadingName | null => room[side] === domain[side]
+    ? null
+    : byRequirement.find(({ intervals }) => intervals.some(interval => interval[side] === room[side]))?.reading ?? null
+  return { below: ending(0), above: ending(1) }
+}

@@ -17,14 +17,21 @@ export function useTypedGains() {
     const present = store.solution?.gains
     if (!present) return
     const gains = { ...present, [name]: value } as Gains
-    const { loop, controller } = bench.document
+    const { controller } = bench.document
     if (!controllerForms[controller.form].reachesEveryPoint && 'k' in gains && gains.k <= 0) {
       problem.value = 'The locus is drawn for gains greater than 0.'
       return
     }
-    const asked = bench.document
+    await goTo(gains)
+  }
+
+  let asked = 0
+  /** The design point goes where these gains put the loop. Of several asked for one after the other the last counts. */
+  async function goTo(gains: Gains) {
+    const { loop, controller } = bench.document
+    const number = ++asked
     const answer = await store.evaluateGains({ loop, controller }, gains)
-    if (bench.document !== asked) return
+    if (number !== asked || bench.document.loop !== loop || bench.document.controller !== controller) return
     if (!('gains' in answer)) {
       problem.value = answer.message
       return
@@ -34,7 +41,7 @@ export function useTypedGains() {
     else problem.value = 'With these gains every root is real, and no design point of this form stands for them.'
   }
 
-  return { typeGain, problem }
+  return { typeGain, goTo, problem }
 }
 
 /**

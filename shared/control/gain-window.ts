@@ -4,6 +4,7 @@ import { NoAnswerError } from './errors'
 import { imaginaryAxisCrossings } from './locus/crossings'
 import { readAll } from './readings'
 import { respondTo } from './response/response'
+import { scaleGains } from './scale-gains'
 import { diesOut } from './stability'
 import type { Controller, Gains, GainWindow, Interval, LoopModel, ReadingName, Requirement } from './types'
 import { judge } from './verdicts'
@@ -32,16 +33,11 @@ interface Sample {
  * @param gains the present ones; all are multiplied (zero and pole of a lead or lag stay)
  */
 export function gainWindow(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], settlingBandPercent = 2): GainWindow {
-  const sampleAt = (x: number): Sample => ({ x, room: roomAt(model, controller, scaled(gains, Math.exp(x)), requirements, settlingBandPercent) })
+  const sampleAt = (x: number): Sample => ({ x, room: roomAt(model, controller, scaleGains(gains, Math.exp(x)), requirements, settlingBandPercent) })
   const samples = refineTurns(firstPlaces(model, controller, gains).map(sampleAt), sampleAt)
   const byRequirement = requirements.map((requirement, index) => ({ ...requirement, intervals: intervalsOf(samples, index, sampleAt) }))
   const window = byRequirement.reduce<Interval[]>((common, { intervals }) => intersect(common, intervals), [domain])
   return { window, byRequirement, tightest: tightestOf(window, byRequirement) }
-}
-
-/** The gains with the overall gain multiplied. */
-export function scaled(gains: Gains, factor: number): Gains {
-  return Object.fromEntries(Object.entries(gains).map(([name, value]) => [name, name === 'zero' || name === 'pole' ? value : value as number * factor])) as unknown as Gains
 }
 
 function roomAt(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], settlingBandPercent: number): number[] {

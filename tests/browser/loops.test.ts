@@ -60,3 +60,37 @@ describe('loops beyond one gain', () => {
     await someone.page.getByText('less than 0').first().waitFor()
   })
 })
+
+describe('the room for the gain', () => {
+  const sentence = () => someone.page.locator('[data-test="room-sentence"]').innerText()
+
+  it('is told with what ends it, and the gain moves along it by hand and by key', async () => {
+    await expect.poll(sentence).toMatch(/^Every requirement is met from k = [\d.]+ \([a-z ]+\) to k = [\d.]+ \(overshoot\)\.$/)
+    const [, low = '', high = ''] = /from k = ([\d.]+).* to k = ([\d.]+)/.exec(await sentence()) ?? []
+    const gain = await bench.gain()
+    expect(gain).toBeGreaterThan(Number(low))
+    expect(gain).toBeLessThan(Number(high))
+
+    const strip = someone.page.getByRole('slider', { name: 'Overall gain' })
+    const box = (await strip.boundingBox())!
+    await someone.page.mouse.move(box.x + box.width / 2, box.y + 6)
+    await someone.page.mouse.down()
+    await someone.page.mouse.move(box.x + box.width * 0.6, box.y + 6, { steps: 5 })
+    await someone.page.mouse.up()
+    // A tenth of the strip is a factor of 100^0.2.
+    await bench.awaitFigure('gain', value => expect(value / gain).toBeCloseTo(100 ** 0.2, 1))
+    await expect.poll(sentence).toMatch(/^Not here: every requirement is met from k/)
+
+    const before = await bench.gain()
+    await strip.focus()
+    await someone.page.keyboard.press('ArrowLeft')
+    await bench.awaitFigure('gain', value => expect(value * 1.02).toBeCloseTo(before, 6))
+  })
+
+  it('is said to be none where requirements exclude one another', async () => {
+    await bench.placePoint(0.1, 4)
+    await bench.chooseController('pd')
+    await bench.typeCoefficients({ numerator: '1', denominator: '1 0 100 0' })
+    await expect.poll(sentence, { timeout: 10_000 }).toMatch(/No gain meets every requirement|Not here/)
+  })
+})

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { gainWindow, scaled } from '#shared/control/gain-window'
+import { gainWindow } from '#shared/control/gain-window'
+import { scaleGains } from '#shared/control/scale-gains'
 import { solveDesign } from '#shared/control/solve'
 import type { Requirement } from '#shared/control/types'
 import { loopOf } from '../../helpers/loops'
@@ -37,8 +38,8 @@ describe('the gain window', () => {
   })
 
   it('multiplies every free gain and leaves places alone', () => {
-    expect(scaled({ kp: 2, ki: 3, kd: 4 }, 2)).toEqual({ kp: 4, ki: 6, kd: 8 })
-    expect(scaled({ k: 5, zero: -1, pole: -10 }, 2)).toEqual({ k: 10, zero: -1, pole: -10 })
+    expect(scaleGains({ kp: 2, ki: 3, kd: 4 }, 2)).toEqual({ kp: 4, ki: 6, kd: 8 })
+    expect(scaleGains({ k: 5, zero: -1, pole: -10 }, 2)).toEqual({ k: 10, zero: -1, pole: -10 })
   })
 
   it('agrees with the verdicts at gains drawn at random, near its edges too', () => {
@@ -53,7 +54,7 @@ describe('the gain window', () => {
       for (const factor of factors.filter(f => f > 1e-3 && f < 1e3 && edges.every(edge => Math.abs(f / edge - 1) > 1e-5))) {
         let verdicts
         try {
-          verdicts = solveDesign(model, { form: 'gain' }, { gains: scaled(gains, factor) }, { requirements }).verdicts
+          verdicts = solveDesign(model, { form: 'gain' }, { gains: scaleGains(gains, factor) }, { requirements }).verdicts
         } catch {
           continue
         }

@@ -1,0 +1,44 @@
+import type { GainWindow, Gains } from '#shared/control/types'
+import { askServer } from '~/utils/ask-server'
+
+/** The room about some gains, with the gains that its factors multiply. */
+export interface RoomAbout {
+  gains: Gains
+  window: GainWindow
+}
+
+const pauseMs = 250
+
+/**
+ * How far the gain may go before a requirement breaks. It is asked for when the hand rests, since a drag does not need it; what is shown meanwhile
+ * belongs to the gains it was asked for.
+ */
+export function useGainWindow() {
+  const bench = useBenchStore()
+  const store = useSolutionStore()
+  const room = shallowRef<RoomAbout | null>(null)
+  let timer: ReturnType<typeof setTimeout> | undefined
+  let asked = 0
+
+  async function ask() {
+    const { loop, controller, requirements } = bench.document
+    const gains = store.solution?.gains
+    if (!gains || store.stale || requirements.length === 0) return void (room.value = null)
+    const number = ++asked
+    try {
+      const window = await askServer<GainWindow>('/api/design/gain-window', { loop, controller, gains, requirements })
+      if (number === asked) room.value = { gains, window }
+    } catch {
+      // The plate says by itself when the server does not answer or has nothing to say.
+      if (number === asked) room.value = null
+    }
+  }
+
+  watch(() => [store.solution, bench.document.requirements, store.stale, bench.gestureStart], () => {
+    clearTimeout(timer)
+    if (bench.gestureStart === null) timer = setTimeout(() => void ask(), pauseMs)
+  }, { immediate: import.meta.client })
+  onScopeDispose(() => clearTimeout(timer))
+
+  return { room }
+}

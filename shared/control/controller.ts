@@ -5,8 +5,12 @@ import type { Controller, Gains, LoopModel, TransferFunction } from './types'
 
 /** Everything that answers to reference r, disturbance d at the plant input and the loop broken at the plant input. */
 export interface LoopFunctions {
+  /** Seconds between controller output and plant input. With it L, `reference` and the loop's part of `error` carry a factor e^(-s deadTime) beside what stands here. */
+  deadTime: number
   /** L: the loop transfer, controller times plant times sensor; for the rate form G (kp H + kr s). */
   loop: TransferFunction
+  /** r to the controller output with the feedback cut. */
+  controller: TransferFunction
   /** r to y. */
   reference: TransferFunction
   /** r to the controller output; improper where a derivative acts on the reference. */
@@ -15,7 +19,7 @@ export interface LoopFunctions {
   disturbance: TransferFunction
   /** r to r - y. */
   error: TransferFunction
-  /** The closed loop's denominator, not normalised; its roots are the closed-loop poles. */
+  /** The closed loop's denominator without dead time, not normalised; its roots are then the closed-loop poles. */
   characteristic: number[]
 }
 
@@ -66,14 +70,17 @@ export function loopFunctions(model: LoopModel, controller: Controller, gains: G
   refuseImproper(loop)
   inRange(loop)
   const characteristic = polynomial.add(loop.denominator, loop.numerator)
-  if (polynomial.degree(characteristic) < polynomial.degree(loop.denominator)) {
+  const deadTime = model.deadTime ?? 0
+  if (deadTime === 0 && polynomial.degree(characteristic) < polynomial.degree(loop.denominator)) {
     throw new NoAnswerError('the loop is algebraic: 1 + L(s) vanishes as s grows, so no output is defined at these gains')
   }
   const ahead = polynomial.multiply(onError, sensor.denominator)
   const through = polynomial.multiply(ahead, plant.numerator)
   const over = (numerator: number[]) => ({ numerator, denominator: characteristic })
   return {
+    deadTime,
     loop,
+    controller: { numerator: onError, denominator },
     reference: over(through),
     effort: over(polynomial.multiply(ahead, plant.denominator)),
     disturbance: over(polynomial.multiply(polynomial.multiply(denominator, sensor.denominator), plant.numerator)),

@@ -1,11 +1,9 @@
-import { roots } from '../numerics/roots'
-import { loopFunctions, openLoop } from './controller'
+import { closeLoop } from './closed-loop'
+import { openLoop } from './controller'
 import { NoAnswerError } from './errors'
 import { imaginaryAxisCrossings } from './locus/crossings'
 import { readAll } from './readings'
-import { respondTo } from './response/response'
 import { scaleGains } from './scale-gains'
-import { diesOut } from './stability'
 import type { Controller, Gains, GainWindow, Interval, LoopModel, ReadingName, Requirement } from './types'
 import { judge } from './verdicts'
 
@@ -42,11 +40,9 @@ export function gainWindow(model: LoopModel, controller: Controller, gains: Gain
 
 function roomAt(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], settlingBandPercent: number): number[] {
   try {
-    const functions = loopFunctions(model, controller, gains)
-    const poles = roots(functions.characteristic)
-    const stable = poles.every(diesOut)
-    const readings = readAll(functions, poles, stable, respondTo('reference-step', functions, poles), { amplitude: 1, settlingBandPercent })
-    return judge(requirements, readings, poles, stable).map(({ actual, limit, value, met }) => {
+    const closed = closeLoop(model, controller, gains)
+    const readings = readAll(closed, closed.respondTo('reference-step', 1), { amplitude: 1, settlingBandPercent })
+    return judge(requirements, readings, closed.poles, closed.stable).map(({ actual, limit, value, met }) => {
       const room = actual === null ? Infinity : Math.abs(limit === 'at-most' ? value - actual : actual - value)
       return met ? room : -room
     })

@@ -1,10 +1,5 @@
-import type { Complex } from '../numerics/complex'
-import { bandwidth } from './frequency/bandwidth'
-import type { LoopFunctions } from './controller'
-import { margins } from './frequency/margins'
+import type { ClosedLoop } from './closed-loop'
 import type { LoopResponse } from './response/response'
-import { sensitivityPeak } from './frequency/sensitivity'
-import { stationaryError } from './response/steady-state'
 import { stepFigures } from './response/step-figures'
 import { largestSize } from './response/trajectory'
 import type { Readings } from './types'
@@ -20,12 +15,12 @@ export interface ReadingOptions {
  * the response and the bandwidth do not, while margins and sensitivity peak, which are figures of the loop transfer, do.
  * @param step output and effort after a unit reference step
  */
-export function readAll(functions: LoopFunctions, poles: readonly Complex[], stable: boolean, step: LoopResponse, options: ReadingOptions): Readings {
-  const ofLoop = { ...margins(functions.loop, stable), sensitivityPeak: sensitivityPeak(functions.loop, poles) }
-  if (!stable) {
+export function readAll(closed: ClosedLoop, step: LoopResponse, options: ReadingOptions): Readings {
+  const ofLoop = closed.frequencyFigures()
+  if (!closed.stable) {
     return finiteOrNull({
       finalValue: null, overshootPercent: null, peakTime: null, riseTime: null, settlingTime: null,
-      steadyStateErrorStep: null, steadyStateErrorRamp: null, peakEffort: null, ...ofLoop, bandwidth: null,
+      steadyStateErrorStep: null, steadyStateErrorRamp: null, peakEffort: null, ...ofLoop,
     })
   }
   const { amplitude, settlingBandPercent } = options
@@ -34,11 +29,10 @@ export function readAll(functions: LoopFunctions, poles: readonly Complex[], sta
   return finiteOrNull({
     ...figures,
     finalValue: scaled(figures.finalValue),
-    steadyStateErrorStep: scaled(stationaryError(functions.error, 1)),
-    steadyStateErrorRamp: scaled(stationaryError(functions.error, 2)),
+    steadyStateErrorStep: scaled(closed.stationaryError(1)),
+    steadyStateErrorRamp: scaled(closed.stationaryError(2)),
     peakEffort: step.effort.impulsive ? null : largestSize(step.effort) * Math.abs(amplitude),
     ...ofLoop,
-    bandwidth: bandwidth(functions.reference),
   })
 }
 

@@ -2,15 +2,14 @@ import { zero, type Complex } from '../numerics/complex'
 import { isZero } from '../numerics/polynomial'
 import { roots } from '../numerics/roots'
 import { toDegrees } from './angle'
-import { loopFunctions } from './controller'
+import { closeLoop } from './closed-loop'
 import { InvalidInputError, NoAnswerError } from './errors'
 import { describePoint } from './design-point'
 import { dominantPole } from './dominant-pole'
 import { estimateAt } from './estimate'
 import { placeGains, type Placement } from './placement'
 import { readAll } from './readings'
-import { respondTo, sampleResponse } from './response/response'
-import { diesOut } from './stability'
+import { sampleResponse } from './response/response'
 import type { Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
 import { judge } from './verdicts'
 
@@ -51,11 +50,10 @@ export function solveDesign(model: LoopModel, controller: Controller, target: De
 function evaluate(model: LoopModel, controller: Controller, placement: Placement, asked: Complex | null, options: SolveOptions): DesignSolution {
   const response = options.response ?? {}
   const { input = 'reference-step', amplitude = 1, settlingBandPercent = usualSettlingBandPercent } = response
-  const functions = loopFunctions(model, controller, placement.gains)
-  const poles = roots(functions.characteristic)
-  const stable = poles.every(diesOut)
-  const step = respondTo('reference-step', functions, poles)
-  const readings = readAll(functions, poles, stable, step, { amplitude, settlingBandPercent })
+  const closed = closeLoop(model, controller, placement.gains)
+  const { functions, poles, stable } = closed
+  const step = closed.respondTo('reference-step', amplitude)
+  const readings = readAll(closed, step, { amplitude, settlingBandPercent })
   const designPoint = asked ?? dominantPole(poles, functions.reference) ?? zero
   const verdicts = judge(options.requirements ?? [], readings, poles, stable)
   return {
@@ -67,7 +65,7 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
     closedLoopPoles: poles,
     closedLoopZeros: isZero(functions.reference.numerator) ? [] : roots(functions.reference.numerator),
     stable,
-    response: sampleResponse(input === 'reference-step' ? step : respondTo(input, functions, poles), poles, response),
+    response: sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), poles, response),
     readings,
     estimate: estimateAt(designPoint),
     dominance: null,

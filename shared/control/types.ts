@@ -14,6 +14,19 @@ export interface LoopModel {
   plant: TransferFunction
   sensor?: TransferFunction
   rateFeedback: number
+  /** Seconds between controller output and plant input; 0 where absent. */
+  deadTime?: number
+  /** The controller output goes to the plant within +- this; no limit where absent. */
+  actuatorLimit?: number
+  /** The controller runs at instants a period apart, its output held between; continuous where absent. */
+  sampling?: Sampling
+}
+
+export interface Sampling {
+  /** Seconds. */
+  period: number
+  /** Whether an output takes effect one period after the sample that it was computed from. */
+  computingDelay: boolean
 }
 
 /** The controller forms; the meaning of each field is fixed by docs/http-contract.md. */

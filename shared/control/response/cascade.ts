@@ -1,8 +1,9 @@
 import type { Complex } from '../../numerics/complex'
 import { applyMatrix, matrixExponential } from '../../numerics/matrix-exponential'
-import { leading, rootsAtOrigin, type Polynomial } from '../../numerics/polynomial'
+import { rootsAtOrigin, type Polynomial } from '../../numerics/polynomial'
 import { isImpulsive, polesAtOrigin, remainingPolynomial, type Transform } from './modal-sum'
 import { diesOut } from '../stability'
+import { realise, sectionsOf, type Section } from './state-space'
 import { instantsPerLength, polynomialAt, type Instant, type Trajectory } from './trajectory'
 
 /**
@@ -10,9 +11,6 @@ import { instantsPerLength, polynomialAt, type Instant, type Trajectory } from '
  * and nearly repeated poles need no special care here; the entries of the exponential are divided differences of e^(pt) over the poles
  * (G. Opitz, "Steigungsmatrizen", 1964), which do not cancel.
  */
-
-/** One section: g/(s - p) for a real pole, w^2/(s^2 - 2 re s + w^2) for a pair; g = |p| or, at the origin, the `pace` of the others. */
-interface Section { pole: Complex, gain: number }
 
 interface Realisation {
   /** n*n entries, row after row. */
@@ -30,7 +28,7 @@ const frozen = 1e250
  * One that grows can be evaluated and sampled, but not walked (`instant`, `previous`).
  */
 export function cascade(transform: Transform): Trajectory {
-  const system = realise(transform)
+  const system = realiseTransform(transform)
   const remains = remainingPolynomial(transform)
   const decays = transform.poles.every(pole => diesOut(pole) || (pole.re === 0 && pole.im === 0))
   const steady = (t: number) => polynomialAt(remains, t)
@@ -140,81 +138,23 @@ class Table {
   }
 }
 
-function realise(transform: Transform): Realisation {
+function realiseTransform(transform: Transform): Realisation {
   const { sections, numerator, denominator } = chain(transform)
-  const n = sections.reduce((sum, section) => sum + (section.pole.im === 0 ? 1 : 2), 0)
-  const matrix = new Float64Array(n * n)
-  const start = new Float64Array(n)
-  const first: number[] = []
-  let row = 0
-  sections.forEach(({ pole, gain }, i) => {
-    first.push(row)
-    const input = i === 0 ? -1 : first[i - 1]!
-    const driven = pole.im === 0 ? row : row + 1
-    if (pole.im === 0) matrix[row * n + row] = pole.re
-    else {
-      matrix[row * n + row + 1] = gain
-      matrix[(row + 1) * n + row] = -gain
-      matrix[(row + 1) * n + row + 1] = 2 * pole.re
-    }
-    if (input < 0) start[driven] = gain
-    else matrix[driven * n + input] = gain
-    row = driven + 1
-  })
-  // The sections multiply to the denominator only as well as its roots are known, which for a multiple root is poorly. What the product lacks, fed
-  // back to the head of the chain, makes the denominator exact.
-  const head = sections[0]!.pole.im === 0 ? 0 : 1
-  weights(sections, first, denominator, n).forEach((weight, j) => matrix[head * n + j]! -= sections[0]!.gain * weight)
-  return { matrix, start, output: weights(sections, first, numerator, n) }
+  const { matrix, input, outputOf } = realise(sections, denominator)
+  return { matrix, start: input, output: outputOf(numerator) }
 }
 
-/** Sections, the fastest first, and numerator and monic denominator with common roots at the origin taken out. */
+/** Sections for the poles with common roots at the origin taken out, and numerator and denominator likewise. */
 function chain(transform: Transform): { sections: Section[], numerator: number[], denominator: number[] } {
   const atOrigin = polesAtOrigin(transform)
-  const poles = transform.poles.filter(pole => pole.im > 0 || (pole.im === 0 && pole.re !== 0))
-  const sizes = poles.map(pole => Math.hypot(pole.re, pole.im))
-  const pace = sizes.length > 0 ? Math.min(...sizes) : 1
-  const sections = poles.map((pole, i) => ({ pole, gain: sizes[i]! })).sort((a, b) => b.gain - a.gain)
-  for (let i = 0; i < atOrigin; i++) sections.push({ pole: { re: 0, im: 0 }, gain: pace })
-  const lead = leading(transform.denominator)
-  const withZeros = (p: Polynomial, zeros: number) => [...p.slice(0, p.length - rootsAtOrigin(p)).map(c => c / lead), ...new Array<number>(Math.max(0, zeros)).fill(0)]
-  return { sections, numerator: withZeros(transform.numerator, -atOrigin), denominator: withZeros(transform.denominator, atOrigin) }
-}
-
-/**
- * Weights of the states that make p over the product of all sections: remainders of p's repeated division by the sections, the last one first. The
- * quotient left over (impulses, or the product itself) is dropped.
- */
-function weights(sections: Section[], first: number[], p: Polynomial, n: number): Float64Array {
-  const output = new Float64Array(n)
-  let rest = p
-  const gains: number[] = []
-  sections.reduce((total, { pole, gain }, i) => gains[i] = total * (pole.im === 0 ? gain : gain * gain), 1)
-  for (let i = sections.length - 1; i >= 0; i--) {
-    const { pole, gain } = sections[i]!
-    const row = first[i]!
-    if (pole.im === 0) {
-      const { quotient, remainder } = divideBy(rest, [-pole.re])
-      output[row] = remainder[0]! / gains[i]!
-      rest = quotient
-    }
-    else {
-      const { quotient, remainder } = divideBy(rest, [-2 * pole.re, gain * gain])
-      output[row] = remainder[1]! / gains[i]!
-      output[row + 1] = remainder[0]! * gain / gains[i]!
-      rest = quotient
-    }
+  const moving = transform.poles.filter(pole => pole.re !== 0 || pole.im !== 0)
+  const resting = Array.from({ length: Math.max(0, atOrigin) }, () => ({ re: 0, im: 0 }))
+  const withZeros = (p: Polynomial, zeros: number) => [...p.slice(0, p.length - rootsAtOrigin(p)), ...new Array<number>(Math.max(0, zeros)).fill(0)]
+  return {
+    sections: sectionsOf([...moving, ...resting]),
+    numerator: withZeros(transform.numerator, -atOrigin),
+    denominator: withZeros(transform.denominator, atOrigin),
   }
-  return output
-}
-
-/** Division by a monic polynomial given without its leading 1; the remainder has as many coefficients as `tail`. */
-function divideBy(p: Polynomial, tail: readonly number[]): { quotient: number[], remainder: number[] } {
-  const work = [...p]
-  const quotientLength = Math.max(0, work.length - tail.length)
-  for (let i = 0; i < quotientLength; i++) tail.forEach((coefficient, k) => work[i + 1 + k]! -= coefficient * work[i]!)
-  const remainder = work.slice(quotientLength)
-  return { quotient: work.slice(0, quotientLength), remainder: [...new Array<number>(tail.length - remainder.length).fill(0), ...remainder] }
 }
 
 function scaledExponential(matrix: Float64Array, t: number): Float64Array {

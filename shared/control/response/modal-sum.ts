@@ -60,7 +60,7 @@ export function modalSum(transform: Transform): Trajectory | null {
   const { modes, error } = residues(transform)
   const reference = signalSize(modes, remains)
   if (!(error + startError(transform, modes, remains) <= tolerance * reference)) return null
-  return trajectoryOf(modes, remains, isImpulsive(transform), reference)
+  return sumOfModes(modes, remains, isImpulsive(transform), reference)
 }
 
 /** How far the sum misses y(0+), which the leading coefficients tell: what the poles' own errors do, where those are larger than rounding. */
@@ -120,7 +120,7 @@ function residues(transform: Transform): { modes: Modes, error: number } {
 }
 
 /** A size of the signal while it moves: the largest of a few values at the time scales of its modes. */
-function signalSize(modes: Modes, remains: number[]): number {
+export function signalSize(modes: Modes, remains: number[]): number {
   let largest = Math.abs(remains[0]!)
   for (let i = 0; i < modes.sigma.length; i++) {
     const t = 1 / Math.hypot(modes.sigma[i]!, modes.omega[i]!)
@@ -138,7 +138,8 @@ function sumAt({ sigma, omega, re, im }: Modes, t: number): number {
   return sum
 }
 
-function trajectoryOf(modes: Modes, remains: number[], impulsive: boolean, reference: number): Trajectory {
+/** A sum of modes beside what remains, as a signal. */
+export function sumOfModes(modes: Modes, remains: number[], impulsive: boolean, reference: number): Trajectory {
   const { sigma, omega, re, im } = modes
   const decays = sigma.every((re, i) => diesOut({ re, im: omega[i]! }))
   const speeds: Modes = {

@@ -65,6 +65,8 @@ export function highest(y: Trajectory, sign: 1 | -1, floor: number): Extremum | 
       const value = sign * y.transient(time)
       if (value > best.value) best = { time, value }
     }
+    // A signal with corners or jumps may be highest where it does not turn.
+    if (b !== null && sign * b.value > best.value) best = { time: b.time, value: sign * b.value }
     a = b
   }
   return best.value > floor ? best : null
@@ -80,9 +82,9 @@ export function firstReaching(y: Trajectory, sign: 1 | -1, level: number): numbe
     if (b === null) return null
     if (sign * a.slope > 0 && sign * b.slope < 0 && sign * (a.value + a.slope * (b.time - a.time)) >= level) {
       const top = turning(y, a, b)
-      if (gap(top) >= 0) return findRoot(gap, a.time, top)
+      if (gap(top) >= 0) return crossing(gap, a.time, top)
     }
-    if (sign * b.value >= level) return findRoot(gap, a.time, b.time)
+    if (sign * b.value >= level) return crossing(gap, a.time, b.time)
     a = b
   }
   return null
@@ -116,10 +118,10 @@ export function lastOutside(y: Trajectory, band: number): number {
     const valueA = y.transient(a)
     const slopeA = y.slope(a)
     if (slopeA * slopeB < 0 && Math.max(Math.abs(valueA + slopeA * (b - a)), Math.abs(valueB - slopeB * (b - a))) > band) {
-      const turn = findRoot(t => y.slope(t), a, b)
-      if (excess(turn) > 0 && excess(b) <= 0) return findRoot(excess, turn, b)
+      const turn = crossing(t => y.slope(t), a, b)
+      if (excess(turn) > 0 && excess(b) <= 0) return crossing(excess, turn, b)
     }
-    if (Math.abs(valueA) > band) return excess(b) < 0 ? findRoot(excess, a, b) : b
+    if (Math.abs(valueA) > band) return excess(b) < 0 ? crossing(excess, a, b) : b
     b = a
     valueB = valueA
     slopeB = slopeA
@@ -128,7 +130,12 @@ export function lastOutside(y: Trajectory, band: number): number {
 }
 
 function turning(y: Trajectory, a: Instant, b: Instant): number {
-  return findRoot(t => y.slope(t), a.time, b.time)
+  return crossing(t => y.slope(t), a.time, b.time)
+}
+
+/** Where f changes sign between a and b; b where it does so by a jump at an end, which f at the ends does not show. */
+function crossing(f: (t: number) => number, a: number, b: number): number {
+  return Math.sign(f(a)) * Math.sign(f(b)) === 1 ? b : findRoot(f, a, b)
 }
 
 /** An instant from which the envelope stays within the band, found to one step of a walk from above. */

@@ -1,0 +1,60 @@
+import type { Complex } from '../numerics/complex'
+import { roots } from '../numerics/roots'
+import { loopFunctions, type LoopFunctions } from './controller'
+import { delayedLoop } from './delay/delayed-loop'
+import { bandwidth } from './frequency/bandwidth'
+import { margins, type Margins } from './frequency/margins'
+import { sensitivityPeak } from './frequency/sensitivity'
+import { limitedResponse } from './limited/limited-response'
+import { respondTo, type LoopResponse } from './response/response'
+import { stationaryError } from './response/steady-state'
+import { sampledLoop } from './sampled/sampled-loop'
+import { diesOut } from './stability'
+import type { Controller, Gains, LoopModel, Readings, ResponseInput } from './types'
+
+/**
+ * The loop closed at given gains, whatever is in it: what every reading is taken from. A dead time, a sampled controller and a limit on its output each
+ * change how these are found, not what they mean.
+ */
+export interface ClosedLoop {
+  /** The continuous loop in rational form; see `LoopFunctions.deadTime`. */
+  functions: LoopFunctions
+  /** All roots, or with dead time those near the origin; of a sampled loop as ln(z)/period. */
+  poles: Complex[]
+  stable: boolean
+  frequencyFigures(): FrequencyFigures
+  /** What r - y tends to for a unit step (1), ramp (2) or parabola (3); null where it grows. */
+  stationaryError(integrators: 1 | 2 | 3): number | null
+  /** Output and controller output after a unit input. */
+  respondTo(input: ResponseInput, amplitude: number): LoopResponse
+}
+
+export type FrequencyFigures = Margins & Pick<Readings, 'sensitivityPeak' | 'bandwidth'>
+
+/**
+ * @throws InvalidInputError where the gains are not those of the form
+ * @throws NoAnswerError for an algebraic loop and for a loop beyond what can be followed
+ */
+export function closeLoop(model: LoopModel, controller: Controller, gains: Gains): ClosedLoop {
+  const functions = loopFunctions(model, controller, gains)
+  if (model.sampling !== undefined) return sampledLoop(model, controller, gains, functions, model.sampling)
+  const loop = functions.deadTime > 0 ? delayedLoop(functions) : rationalLoop(functions)
+  const { actuatorLimit } = model
+  if (actuatorLimit === undefined) return loop
+  return { ...loop, respondTo: (input, amplitude) => limitedResponse(loop, input, amplitude, actuatorLimit) }
+}
+
+function rationalLoop(functions: LoopFunctions): ClosedLoop {
+  const poles = roots(functions.characteristic)
+  const stable = poles.every(diesOut)
+  return {
+    functions,
+    poles,
+    stable,
+    frequencyFigures: () => ({
+      ...margins(functions.loop, stable), sensitivityPeak: sensitivityPeak(functions.loop, poles), bandwidth: stable ? bandwidth(functions.reference) : null,
+    }),
+    stationaryError: integrators => stationaryError(functions.error, integrators),
+    respondTo: input => respondTo(input, functions, poles),
+  }
+}

@@ -1,0 +1,132 @@
+import type { Complex } from '../../numerics/complex'
+import { leading } from '../../numerics/polynomial'
+import { roots } from '../../numerics/roots'
+import type { LoopFunctions } from '../controller'
+import { NoAnswerError } from '../errors'
+import { PiecewiseSignal } from '../response/piecewise'
+import { respond } from '../response/response'
+import { realise, sectionsOf } from '../response/state-space'
+import { nodesPerPiece, StepPropagator } from '../response/step-propagator'
+import { polynomialAt, type Trajectory } from '../response/trajectory'
+import { relativeDegree } from '../transfer-function'
+import type { ResponseInput, TransferFunction } from '../types'
+
+/** Turn (radians) of the fastest living pole over one piece: the polynomial of degree 8 through it is then good to 1e-10. */
+const pieceAngle = 1
+/** A pole is gone after so many of its time constants. */
+const lifetimes = 40
+/** Halvings of the dead time that a grid may take. */
+const finestGrid = 12
+/** Work that one response may take. */
+export const mostPieces = 60_000
+
+/**
+ * A closed loop with dead time, followed period of the dead time by period: what the plant gets now is what the controller put out one dead time ago, so each
+ * period is a linear system with a known input, carried exactly (the method of steps).
+ * Source: R. Bellman, K. L. Cooke, "Differential-Difference Equations" (1963).
+ */
+export class DelaySimulation {
+  readonly output = new PiecewiseSignal()
+  readonly effort = new PiecewiseSignal()
+  private readonly grid: StepPropagator[]
+  private readonly free: Trajectory
+  private readonly impulse: number
+  /** What an impulse of size 1 at the plant input adds to the state. */
+  private readonly kick: Float64Array
+  private readonly disturbed: number
+  private state: Float64Array
+  /** Controller output of the period before, piece by piece. */
+  private before: Float64Array[]
+  private periods = 0
+
+  /**
+   * @param crossover rad/s: up to here the loop acts on what comes back, and the grid resolves it
+   * @param limit bound on the size of the controller output
+   */
+  constructor(private readonly functions: LoopFunctions, input: ResponseInput, crossover: number, private readonly limit = Infinity) {
+    const { loop, disturbance, controller, deadTime } = functions
+    const poles = roots(loop.denominator)
+    const system = realise(sectionsOf(poles), loop.denominator)
+    const plant: TransferFunction = { numerator: disturbance.numerator, denominator: loop.denominator }
+    const outputs = [plant, loop].map(g => ({ weights: system.outputOf(g.numerator), direct: relativeDegree(g) === 0 ? leading(g.numerator) / leading(g.denominator) : 0 }))
+    const prepared = new Map<number, StepPropagator>()
+    this.grid = gridOf(deadTime, poles, limit < Infinity ? 8 * crossover : crossover).map((length) => {
+      if (!prepared.has(length)) prepared.set(length, new StepPropagator(system, outputs, length))
+      return prepared.get(length)!
+    })
+    const integrations = input === 'reference-ramp' ? 2 : 1
+    const silent: TransferFunction = { numerator: [0], denominator: [1] }
+    this.free = respond(input === 'disturbance-step' ? silent : controller, input === 'disturbance-step' ? [] : roots(controller.denominator), integrations)
+    this.impulse = input === 'disturbance-step' || limit < Infinity ? 0 : impulseOf(controller, integrations, loop)
+    this.disturbed = input === 'disturbance-step' ? 1 : 0
+    this.state = new Float64Array(system.input.length)
+    this.before = this.grid.map(() => new Float64Array(nodesPerPiece))
+    this.kick = system.input
+  }
+
+  get time(): number {
+    return this.periods * this.functions.deadTime
+  }
+
+  /** Whether the controller output begins with an impulse. */
+  get impulsive(): boolean {
+    return this.impulse !== 0
+  }
+
+  /** Whether the next period would be beyond the work that one response may take. */
+  get exhausted(): boolean {
+    return (this.periods + 1) * this.grid.length > mostPieces
+  }
+
+  /** Follows the loop to t or as far as its allowance of work goes. */
+  extendTo(t: number): void {
+    while (this.time < t && !this.exhausted) this.followPeriod()
+  }
+
+  private followPeriod(): void {
+    const { grid, disturbed } = this
+    if (this.periods === 1 && this.impulse !== 0) this.state = this.state.map((value, i) => value + this.kick[i]! * this.impulse)
+    let start = this.time
+    this.before = grid.map((step, piece) => {
+      const w = disturbed === 0 ? this.before[piece]! : this.before[piece]!.map(value => value + disturbed)
+      const y = step.values(0, this.state, w)
+      const u = step.values(1, this.state, w)
+      for (let node = 0; node < nodesPerPiece; node++) {
+        const t = start + step.length * node / (nodesPerPiece - 1)
+        const wanted = polynomialAt(this.free.remains, t) + this.free.transient(t) - u[node]!
+        u[node] = Math.max(-this.limit, Math.min(this.limit, wanted))
+      }
+      this.output.add(start, step.length, y)
+      this.effort.add(start, step.length, u)
+      this.state = step.end(this.state, w)
+      start += step.length
+      return u
+    })
+    this.periods += 1
+  }
+}
+
+/** Lengths of the pieces of one period, shorter after its start while fast poles live. */
+function gridOf(deadTime: number, poles: readonly Complex[], crossover: number): number[] {
+  const moving = poles.map(({ re, im }) => ({ speed: Math.hypot(re, im), life: re < 0 ? lifetimes / -re : Infinity }))
+  const lengths: number[] = []
+  const units = 2 ** finestGrid
+  for (let at = 0; at < units;) {
+    const fastest = moving.reduce((most, { speed, life }) => at / units * deadTime < life ? Math.max(most, speed) : most, crossover)
+    let size = units
+    while (size > 1 && (size / units * deadTime * fastest > pieceAngle || at % size !== 0)) size /= 2
+    lengths.push(size / units * deadTime)
+    at += size
+  }
+  return lengths
+}
+
+/** Weight of the impulse that a controller with a derivative makes of a step. */
+function impulseOf(controller: TransferFunction, integrations: number, loop: TransferFunction): number {
+  const excess = -relativeDegree(controller) - integrations
+  if (excess < 0) return 0
+  if (excess > 0 || relativeDegree(loop) === 0) {
+    throw new NoAnswerError('the controller makes more of a step than an impulse, which with a dead time comes back again and again: give its derivative a filter')
+  }
+  return leading(controller.numerator) / leading(controller.denominator)
+}

@@ -51,7 +51,9 @@ function analyze(model: LoopModel, controller: Controller, options: AnalysisOpti
   const crossings = imaginaryAxisCrossings(loop)
   const beyond = [...crossings.map(({ gain }) => gain), gainAtInfinity(loop) ?? 0]
   const extent = extentOf([
-    ...whole.poles, ...whole.zeros, ...meetings.map(({ point }) => point), ...crossings.map(({ frequency }) => ({ re: 0, im: frequency })),
+    ...whole.poles, ...whole.zeros, ...meetings.map(({ point }) => point),
+    // The crossings of the delay's own chain go on for ever.
+    ...crossings.slice(0, open.deadTime > 0 ? 1 : undefined).map(({ frequency }) => ({ re: 0, im: frequency })),
   ], loop)
   const drawnMeetings = drawn.poles.length === loop.poles.length ? meetings : breakaways(drawn)
   const branches = drawn.poles.length === 0 ? [] : traceBranches(drawn, drawnMeetings, beyond, extent)
@@ -62,7 +64,7 @@ function analyze(model: LoopModel, controller: Controller, options: AnalysisOpti
       denominator: open.denominator,
       zeros: whole.zeros,
       poles: whole.poles,
-      deadTime: 0,
+      deadTime: open.deadTime,
       type: systemType(open),
       relativeDegree: relativeDegree(open),
     },

@@ -1,7 +1,7 @@
 import * as polynomial from '../numerics/polynomial'
 import { InvalidInputError, NoAnswerError } from './errors'
 import { relativeDegree, series } from './transfer-function'
-import type { Controller, Gains, LoopModel, TransferFunction } from './types'
+import type { Controller, DelayedFunction, Gains, LoopModel, TransferFunction } from './types'
 
 /** Everything that answers to reference r, disturbance d at the plant input and the loop broken at the plant input. */
 export interface LoopFunctions {
@@ -51,10 +51,10 @@ export function effectivePlant({ plant, rateFeedback }: LoopModel): TransferFunc
   return inRange({ numerator: polynomial.trim(plant.numerator), denominator })
 }
 
-/** Plant and sensor in series: what a controller that works on the measured error has to master. */
-export function measuredPlant(model: LoopModel): TransferFunction {
+/** The dead time, the plant and the sensor in series: what a controller that works on the measured error has to master. */
+export function measuredPlant(model: LoopModel): DelayedFunction {
   const plant = effectivePlant(model)
-  return model.sensor === undefined ? plant : inRange(series(plant, model.sensor))
+  return { ...model.sensor === undefined ? plant : inRange(series(plant, model.sensor)), deadTime: model.deadTime ?? 0 }
 }
 
 /**
@@ -99,15 +99,15 @@ function openLoopOf({ onError, onOutput, denominator }: ControllerPolynomials, p
 }
 
 /**
- * L0: the loop transfer without its overall gain, so that L = K L0.
+ * L0: the loop transfer without its overall gain, so that L = K L0; its dead time beside it.
  * @param gains needed by the forms with several free gains. For forms with one k it is taken out; for pd, pi, pid and rate the gains stay inside as
  *   they are, so that the overall gain is a factor on all of them, 1 at the present design.
  */
-export function openLoop(model: LoopModel, controller: Controller, gains?: Gains): TransferFunction {
+export function openLoop(model: LoopModel, controller: Controller, gains?: Gains): DelayedFunction {
   const loop = openLoopOf(controllerPolynomials(controller, unitGains(controller, gains)), effectivePlant(model), model.sensor ?? unity)
   if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to analyse', 'gains')
   refuseImproper(loop)
-  return inRange(loop)
+  return { ...inRange(loop), deadTime: model.deadTime ?? 0 }
 }
 
 function unitGains(controller: Controller, gains: Gains | undefined): Gains {

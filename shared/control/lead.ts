@@ -5,7 +5,7 @@ import * as polynomial from '../numerics/polynomial'
 import { realRootsOfQuadratic } from '../numerics/real-roots'
 import { toDegrees, wrapAngle } from './angle'
 import { NoAnswerError } from './errors'
-import type { Gains, TransferFunction } from './types'
+import type { DelayedFunction, Gains } from './types'
 import { valuesAt } from './values-at'
 
 /** Two zeros closer than this (relative) are one. */
@@ -19,7 +19,7 @@ const coincidence = 1e-7
  * @param ratio pole over zero, > 1
  * @throws NoAnswerError where no z > 0 does it, saying which phase is asked for and how much the ratio can give
  */
-export function placeLead(plant: TransferFunction, ratio: number, s: Complex): Gains[] {
+export function placeLead(plant: DelayedFunction, ratio: number, s: Complex): Gains[] {
   const { numerator, denominator } = valuesAt(plant, s)
   if (complex.abs(denominator) === 0) {
     throw new NoAnswerError('the design point lies on a pole of the plant: a root stays there only without any gain, so no lead is determined', 'designPoint')
@@ -45,11 +45,11 @@ function angleCondition(h: Complex, ratio: number, s: Complex): number[] {
 }
 
 /** d/ds [G (s + z)/(s + ratio z)] = 0 at a real place, as a quadratic in z. */
-function doubleRootCondition(plant: TransferFunction, ratio: number, x: number): number[] {
+function doubleRootCondition(plant: DelayedFunction, ratio: number, x: number): number[] {
   const at = (p: number[]) => evaluateAccurately(p, { re: x, im: 0 }).re
   const n = at(plant.numerator)
   const d = at(plant.denominator)
-  const slope = at(polynomial.derivative(plant.numerator)) * d - n * at(polynomial.derivative(plant.denominator))
+  const slope = at(polynomial.derivative(plant.numerator)) * d - n * at(polynomial.derivative(plant.denominator)) - plant.deadTime * n * d
   return [ratio * slope, (ratio + 1) * x * slope + (ratio - 1) * n * d, slope * x * x]
 }
 

@@ -5,7 +5,7 @@ import { effectivePlant, lagPlaces, measuredPlant, openLoop } from './controller
 import { NoAnswerError } from './errors'
 import { placeLead } from './lead'
 import { placeProportionalDerivative, placeProportionalIntegral, placeRateFeedback, placeThreeTerms } from './three-terms'
-import type { Controller, Gains, LoopModel, TransferFunction } from './types'
+import type { Controller, DelayedFunction, Gains, LoopModel } from './types'
 import { valuesAt } from './values-at'
 
 /** Gains for a design point. */
@@ -48,7 +48,7 @@ function place(model: LoopModel, controller: Controller, designPoint: Complex): 
     case 'pi': return reached([placeProportionalIntegral(measuredPlant(model), designPoint)])
     case 'pd': return reached([placeProportionalDerivative(measuredPlant(model), controller.derivativeFilter ?? 0, designPoint)])
     case 'pid': return reached(placeThreeTerms(measuredPlant(model), controller.derivativeFilter ?? 0, controller.third, designPoint))
-    case 'rate': return reached([placeRateFeedback(effectivePlant(model), model.sensor ?? { numerator: [1], denominator: [1] }, designPoint)])
+    case 'rate': return reached([placeRateFeedback({ ...effectivePlant(model), deadTime: model.deadTime ?? 0 }, model.sensor ?? { numerator: [1], denominator: [1] }, designPoint)])
   }
 }
 
@@ -57,7 +57,7 @@ function reached([gains, ...alternatives]: Gains[]): Placement {
 }
 
 /** K = 1/|L0(s)|; leftover angle arg L0(s) - pi. An open-loop pole is reached with no gain at all. */
-function placeOneGain(open: TransferFunction, s: Complex, gainsOf: (k: number) => Gains): Placement {
+function placeOneGain(open: DelayedFunction, s: Complex, gainsOf: (k: number) => Gains): Placement {
   const { numerator, denominator } = valuesAt(open, s)
   if (complex.abs(denominator) === 0) return { gains: gainsOf(0), alternatives: [], leftoverAngle: 0, onLocus: true }
   const leftoverAngle = wrapAngle(complex.arg(numerator) - complex.arg(denominator) - Math.PI)

@@ -4,7 +4,7 @@ import { evaluateAccurately } from '../numerics/compensated'
 import * as polynomial from '../numerics/polynomial'
 import { realRootsOfQuadratic } from '../numerics/real-roots'
 import { NoAnswerError } from './errors'
-import type { Gains, ThirdCondition, TransferFunction } from './types'
+import type { DelayedFunction, Gains, ThirdCondition, TransferFunction } from './types'
 import { valuesAt } from './values-at'
 
 /**
@@ -19,20 +19,20 @@ const coincidence = 1e-7
 const nothing = 1e-13
 
 /** kp and kd of kp + kd s/(filter s + 1), so that 1 + G C has a root at s. */
-export function placeProportionalDerivative(plant: TransferFunction, filter: number, s: Complex): Gains {
+export function placeProportionalDerivative(plant: DelayedFunction, filter: number, s: Complex): Gains {
   const [kp, kd] = solvePair(one, derivativeAt(filter, s), wantedAt(plant, s))
   return { kp, kd: orNothing(kd, kp, complex.abs(s)) }
 }
 
 /** kp and ki of kp + ki/s, so that 1 + G C has a root at s. */
-export function placeProportionalIntegral(plant: TransferFunction, s: Complex): Gains {
+export function placeProportionalIntegral(plant: DelayedFunction, s: Complex): Gains {
   refuseIntegrator(s)
   const [kp, ki] = solvePair(one, integralAt(s), wantedAt(plant, s))
   return { kp, ki: orNothing(ki, kp, 1 / complex.abs(s)) }
 }
 
 /** kp of the error, measured by the sensor, and kr of the output's rate, so that 1 + G (kp H + kr s) has a root at s. */
-export function placeRateFeedback(plant: TransferFunction, sensor: TransferFunction, s: Complex): Gains {
+export function placeRateFeedback(plant: DelayedFunction, sensor: TransferFunction, s: Complex): Gains {
   const [kp, kr] = solvePair(functionAt(sensor, s), derivativeAt(0, s), wantedAt(plant, s))
   return { kp, kr: orNothing(kr, kp, complex.abs(s)) }
 }
@@ -44,7 +44,7 @@ export function placeRateFeedback(plant: TransferFunction, sensor: TransferFunct
  * The root at s leaves kp and kd affine in ki. A third real pole p is one more linear equation; the ratio Ti/Td = kp²/(ki kd) makes a quadratic.
  * @throws NoAnswerError where no gains do it
  */
-export function placeThreeTerms(plant: TransferFunction, filter: number, third: ThirdCondition, s: Complex): Gains[] {
+export function placeThreeTerms(plant: DelayedFunction, filter: number, third: ThirdCondition, s: Complex): Gains[] {
   refuseIntegrator(s)
   const derivative = derivativeAt(filter, s)
   const integral = integralAt(s)
@@ -68,7 +68,7 @@ export function placeThreeTerms(plant: TransferFunction, filter: number, third: 
 /** kp = p0 + p1 ki, kd = d0 + d1 ki: all gains that put a root at the design point. */
 interface Family { p0: number, p1: number, d0: number, d1: number }
 
-function throughPole(plant: TransferFunction, filter: number, pole: number, { p0, p1, d0, d1 }: Family): number[] {
+function throughPole(plant: DelayedFunction, filter: number, pole: number, { p0, p1, d0, d1 }: Family): number[] {
   const at = { re: pole, im: 0 }
   const [wanted] = wantedAt(plant, at)
   const [derivative] = derivativeAt(filter, at)
@@ -105,13 +105,14 @@ function integralAt(s: Complex): Pair {
 }
 
 /** -D/N: what the controller must be worth at the point. */
-function wantedAt(plant: TransferFunction, s: Complex): Pair {
+function wantedAt(plant: DelayedFunction, s: Complex): Pair {
   const { numerator, denominator } = valuesAt(plant, s)
   if (s.im !== 0) {
     const { re, im } = complex.divide(denominator, numerator)
     return [-re, -im]
   }
-  const slope = (denominator.re * slopeOf(plant.numerator, s.re) - numerator.re * slopeOf(plant.denominator, s.re)) / (numerator.re * numerator.re)
+  const numeratorSlope = slopeOf(plant.numerator, s.re) * Math.exp(-s.re * plant.deadTime) - plant.deadTime * numerator.re
+  const slope = (denominator.re * numeratorSlope - numerator.re * slopeOf(plant.denominator, s.re)) / (numerator.re * numerator.re)
   return [-denominator.re / numerator.re, slope]
 }
 

@@ -6,6 +6,12 @@ export interface TransferFunction {
   denominator: number[]
 }
 
+/** A transfer function followed by a dead time: g(s) e^(-s deadTime). */
+export interface DelayedFunction extends TransferFunction {
+  /** Seconds, 0 for none. */
+  deadTime: number
+}
+
 /**
  * The loop around a controller, resolved to rational form. `rateFeedback` is a fixed inner gain on s*y around the plant; the sensor stands in the
  * outer feedback path, unity where it is absent.

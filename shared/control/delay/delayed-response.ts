@@ -18,6 +18,9 @@ const periodsByStep = 10
 /** Largest difference (share of the signal) between steps and roots, over the last periods that both know, with which the roots take over. */
 const agreement = 1e-9
 const periodsCompared = 3
+const compared = periodsByStep - periodsCompared
+/** Share of what remains that no figure shows. */
+const extinct = 1e-14
 /** After so many time constants of the slowest root nothing moves. */
 const lifetimes = 40
 /** Powers of s at the origin that limits can feel. */
@@ -77,20 +80,23 @@ function remainsOf({ numerator, delayed }: Signal, q: QuasiPolynomial, integrato
 
 /** The sum over the roots: residues of the transform at each. */
 function tailOf({ numerator, delayed }: Signal, q: QuasiPolynomial, poles: readonly Complex[], integrations: number, remains: number[]): Trajectory {
-  const upper = poles.filter(pole => pole.im >= 0)
-  const modes: Modes = {
-    sigma: Float64Array.from(upper, pole => pole.re), omega: Float64Array.from(upper, pole => pole.im),
-    re: new Float64Array(upper.length), im: new Float64Array(upper.length),
-  }
-  upper.forEach((pole, i) => {
+  const modes: Modes = { sigma: new Float64Array(poles.length), omega: new Float64Array(poles.length), re: new Float64Array(poles.length), im: new Float64Array(poles.length) }
+  let count = 0
+  for (const pole of poles.filter(({ im }) => im >= 0)) {
     let weight = complex.divide(evaluateAccurately(numerator, pole), evaluateQuasi(q, pole).slope)
     if (delayed) weight = complex.multiply(weight, delayFactor(pole, q.deadTime))
     for (let k = 0; k < integrations; k++) weight = complex.divide(weight, pole)
+    // Those of the delay's chain have died away where the sum takes over: they would only cost time.
+    if (complex.abs(weight) * Math.exp(pole.re * compared * q.deadTime) <= extinct * (Math.abs(remains[0]!) + Number.MIN_VALUE)) continue
     const times = pole.im > 0 ? 2 : 1
-    modes.re[i] = times * weight.re
-    modes.im[i] = pole.im > 0 ? times * weight.im : 0
-  })
-  return sumOfModes(modes, remains, false, signalSize(modes, remains))
+    modes.sigma[count] = pole.re
+    modes.omega[count] = pole.im
+    modes.re[count] = times * weight.re
+    modes.im[count] = pole.im > 0 ? times * weight.im : 0
+    count += 1
+  }
+  const living: Modes = { sigma: modes.sigma.slice(0, count), omega: modes.omega.slice(0, count), re: modes.re.slice(0, count), im: modes.im.slice(0, count) }
+  return sumOfModes(living, remains, false, signalSize(living, remains))
 }
 
 /** Whether the roots say what the steps say, over the last periods followed. */
@@ -99,7 +105,7 @@ function agree(pieces: PiecewiseSignal, tail: Trajectory, deadTime: number): boo
   let off = 0
   pieces.starts.forEach((start, i) => {
     size = Math.max(size, Math.abs(pieces.values[i]![0]!))
-    if (start < (periodsByStep - periodsCompared) * deadTime * (1 - 1e-9)) return
+    if (start < compared * deadTime * (1 - 1e-9)) return
     const middle = start + pieces.lengths[i]! / 2
     off = Math.max(off, Math.abs(pieces.at(middle) - polynomialAt(tail.remains, middle) - tail.transient(middle)))
   })

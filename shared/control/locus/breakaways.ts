@@ -1,6 +1,7 @@
 import * as complex from '../../numerics/complex'
 import type { Complex } from '../../numerics/complex'
 import { cluster, type RepeatedRoot } from '../../numerics/multiple-roots'
+import { delayFactor } from '../delay/quasi-polynomial'
 import * as polynomial from '../../numerics/polynomial'
 import { byPlace, roots } from '../../numerics/roots'
 import type { FactoredLoop } from './factored-loop'
@@ -18,13 +19,14 @@ const coincidence = 1e-6
 const realGainTolerance = 1e-7
 
 /**
- * Breakaway and break-in points: roots of N'D - ND' where K = -D/N is real and positive, real and complex ones, by rising gain.
+ * Breakaway and break-in points: roots of N'D - ND' (with a dead time T less T N D) where K = -1/L0 is real and positive, real and complex ones, by rising gain.
  * @param loop without common poles and zeros
  */
 export function breakaways(loop: FactoredLoop): Breakaway[] {
-  const { numerator, denominator } = loop
-  const condition = polynomial.productDifference(
+  const { numerator, denominator, deadTime } = loop
+  const rational = polynomial.productDifference(
     polynomial.derivative(numerator), denominator, numerator, polynomial.derivative(denominator))
+  const condition = deadTime === 0 ? rational : polynomial.subtract(rational, polynomial.scale(polynomial.multiply(numerator, denominator), deadTime))
   if (polynomial.isZero(condition)) return []
   return cluster(withoutRepeated(roots(condition), [...loop.distinctPoles, ...loop.distinctZeros]), coincidence)
     .map(({ place, multiplicity }) => ({ point: multiplicity === 1 ? polish(loop, place) : place, meeting: multiplicity + 1 }))
@@ -42,6 +44,7 @@ export function gainAt(loop: FactoredLoop, s: Complex): Complex {
     if (i < loop.poles.length) value = complex.multiply(value, complex.subtract(s, loop.poles[i]!))
     if (i < loop.zeros.length) value = complex.divide(value, complex.subtract(s, loop.zeros[i]!))
   }
+  if (loop.deadTime > 0) value = complex.multiply(value, delayFactor(complex.negate(s), loop.deadTime))
   return s.im === 0 ? { re: value.re, im: 0 } : value
 }
 
@@ -61,11 +64,11 @@ function symmetric(places: Complex[]): Complex[] {
   return places.filter(place => place.im === 0 || places.some(other => other.re === place.re && other.im === -place.im))
 }
 
-/** Newton on sum 1/(s - poles) - sum 1/(s - zeros), which keeps the accuracy of the factors where coefficients lose it. */
+/** Newton on sum 1/(s - poles) - sum 1/(s - zeros) + dead time, which keeps the accuracy of the factors where coefficients lose it. */
 function polish(loop: FactoredLoop, start: Complex): Complex {
   let s = start
   for (let round = 0; round < 4; round++) {
-    let value: Complex = complex.zero
+    let value: Complex = { re: loop.deadTime, im: 0 }
     let slope: Complex = complex.zero
     const take = (places: Complex[], sign: number) => places.forEach((place) => {
       const term = complex.reciprocal(complex.subtract(s, place))

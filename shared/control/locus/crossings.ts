@@ -1,20 +1,23 @@
+import type { Complex } from '../../numerics/complex'
 import * as polynomial from '../../numerics/polynomial'
 import { roots } from '../../numerics/roots'
 import { diesOut } from '../stability'
+import { delayedRoots, delayedStable } from '../delay/delayed-roots'
 import { breakaways } from './breakaways'
-import type { LoopAnalysis, TransferFunction } from '../types'
+import type { DelayedFunction, LoopAnalysis } from '../types'
 import type { FactoredLoop } from './factored-loop'
+import { meetDelayedRay } from './meet-delayed-ray'
 import { meetRay, type Meeting } from './meet-ray'
 
 /**
  * Gains K > 0 that put roots on the imaginary axis, with the frequency (rad/s, 0 for a root at the origin), by rising frequency. Upper half only;
  * none where whole stretches of the axis are locus.
  */
-export function imaginaryAxisCrossings(open: TransferFunction): LoopAnalysis['imaginaryAxisCrossings'] {
+export function imaginaryAxisCrossings(open: DelayedFunction): LoopAnalysis['imaginaryAxisCrossings'] {
   const atOrigin = -polynomial.coefficientOf(open.denominator, 0) / polynomial.coefficientOf(open.numerator, 0)
   return [
     ...(atOrigin > 0 && Number.isFinite(atOrigin) ? [{ frequency: 0, gain: atOrigin }] : []),
-    ...meetRay(open, { re: 0, im: 1 }).map(({ point, gain }) => ({ frequency: point.im, gain })),
+    ...meet(open, { re: 0, im: 1 }).map(({ point, gain }) => ({ frequency: point.im, gain })),
   ]
 }
 
@@ -30,13 +33,21 @@ export function rayIntersections(loop: FactoredLoop, dampingRatio: number): Meet
       .map(({ point, gain }) => ({ point, gain }))
       .sort((a, b) => b.point.re - a.point.re)
   }
-  return meetRay(loop, { re: -dampingRatio, im: Math.sqrt((1 - dampingRatio) * (1 + dampingRatio)) })
+  return meet(loop, { re: -dampingRatio, im: Math.sqrt((1 - dampingRatio) * (1 + dampingRatio)) })
 }
 
-/** The gain at which a biproper loop loses a root to infinity (1 + L = 0 there), or null. */
-export function gainAtInfinity(open: TransferFunction): number | null {
+function meet(open: DelayedFunction, direction: Complex): Meeting[] {
+  return open.deadTime > 0 ? meetDelayedRay(open, direction) : meetRay(open, direction)
+}
+
+/**
+ * The gain at which a biproper loop loses a root to infinity (1 + L = 0 there), or null. With a dead time the whole chain of the delay's roots passes the
+ * imaginary axis there, whatever the sign.
+ */
+export function gainAtInfinity(open: DelayedFunction): number | null {
   if (polynomial.degree(open.numerator) !== polynomial.degree(open.denominator)) return null
   const gain = -polynomial.leading(open.denominator) / polynomial.leading(open.numerator)
+  if (open.deadTime > 0) return Math.abs(gain)
   return gain > 0 ? gain : null
 }
 
@@ -46,7 +57,7 @@ export function gainAtInfinity(open: TransferFunction): number | null {
  * @param open with its common poles and zeros: a cancelled unstable pole stays unstable
  * @param crossings of the same loop
  */
-export function stableGain(open: TransferFunction, crossings: LoopAnalysis['imaginaryAxisCrossings']): LoopAnalysis['stableGain'] {
+export function stableGain(open: DelayedFunction, crossings: LoopAnalysis['imaginaryAxisCrossings']): LoopAnalysis['stableGain'] {
   const infinity = gainAtInfinity(open)
   const limits = [...crossings.map(({ gain }) => gain), ...(infinity === null ? [] : [infinity])]
     .sort((a, b) => a - b)
@@ -61,18 +72,19 @@ export function stableGain(open: TransferFunction, crossings: LoopAnalysis['imag
   return intervals
 }
 
-function trialGain(open: TransferFunction, from: number, to: number | null): number {
+function trialGain(open: DelayedFunction, from: number, to: number | null): number {
   if (to !== null) return from > 0 ? Math.sqrt(from * to) : to / 2
   return from > 0 ? 2 * from : balancedGain(open)
 }
 
 /** With no limit at all any gain tells; one that weighs N and D alike keeps its roots clear of rounding. */
-function balancedGain({ numerator, denominator }: TransferFunction): number {
+function balancedGain({ numerator, denominator }: DelayedFunction): number {
   const places = [...roots(denominator), ...roots(numerator)].map(root => Math.hypot(root.re, root.im)).filter(size => size > 0)
   const frequency = places.length === 0 ? 1 : Math.exp(places.reduce((sum, size) => sum + Math.log(size), 0) / places.length)
   return polynomial.evaluateSize(denominator, frequency) / polynomial.evaluateSize(numerator, frequency)
 }
 
-function isStable({ numerator, denominator }: TransferFunction, gain: number): boolean {
+function isStable({ numerator, denominator, deadTime }: DelayedFunction, gain: number): boolean {
+  if (deadTime > 0) return delayedStable(delayedRoots({ numerator: polynomial.scale(numerator, gain), denominator, deadTime }))
   return roots(polynomial.combine(1, denominator, gain, numerator)).every(diesOut)
 }

@@ -3,10 +3,10 @@ import { distance } from '../../numerics/complex'
 import { gatherRepeated, repeat, type RepeatedRoot } from '../../numerics/multiple-roots'
 import * as polynomial from '../../numerics/polynomial'
 import { roots } from '../../numerics/roots'
-import type { TransferFunction } from '../types'
+import type { DelayedFunction } from '../types'
 
-/** L0 = gain prod(s - zeros)/prod(s - poles), beside its coefficients. */
-export interface FactoredLoop extends TransferFunction {
+/** L0 = gain prod(s - zeros)/prod(s - poles) e^(-s deadTime), beside its coefficients. */
+export interface FactoredLoop extends DelayedFunction {
   /** Ratio of the leading coefficients, with its sign. */
   gain: number
   /** With repetitions; repeated roots are exactly equal. */
@@ -22,12 +22,13 @@ export const cancellationWidth = 1e-9
 export const invisibleWidth = 1e-6
 
 /** Poles, zeros and gain of L0. */
-export function factor({ numerator, denominator }: TransferFunction): FactoredLoop {
+export function factor({ numerator, denominator, deadTime }: DelayedFunction): FactoredLoop {
   const distinctPoles = gatherRepeated(denominator, roots(denominator))
   const distinctZeros = gatherRepeated(numerator, roots(numerator))
   return {
     numerator,
     denominator,
+    deadTime,
     gain: polynomial.leading(numerator) / polynomial.leading(denominator),
     poles: repeat(distinctPoles),
     zeros: repeat(distinctZeros),
@@ -54,6 +55,7 @@ export function cancelCommon(loop: FactoredLoop, width: number): { loop: Factore
   const reduced = factor({
     numerator: polynomial.fromRoots(symmetric(zeros), polynomial.leading(loop.numerator)),
     denominator: polynomial.fromRoots(symmetric(poles), polynomial.leading(loop.denominator)),
+    deadTime: loop.deadTime,
   })
   return { loop: reduced, cancelled }
 }

@@ -2,6 +2,7 @@ import * as complex from '../../numerics/complex'
 import type { Complex } from '../../numerics/complex'
 import * as polynomial from '../../numerics/polynomial'
 import { roots } from '../../numerics/roots'
+import { delayedRoots } from '../delay/delayed-roots'
 import type { FactoredLoop } from './factored-loop'
 import { farGainStep, gainStepOf, type FarStation, type Launched, type Station } from './launch'
 import { march, type Branch, type Mover } from './march'
@@ -66,9 +67,8 @@ function farStationOf(scaled: ScaledLoop, { numerator, denominator }: FactoredLo
 }
 
 /** The closed-loop roots at a node's gain that take no part in its meetings, in scaled units. */
-function rootsBeside(scaled: ScaledLoop, { numerator, denominator }: FactoredLoop, node: Node): Complex[] {
-  const all = roots(polynomial.combine(1, denominator, node.k * scaled.gainUnit, numerator))
-    .map(root => complex.scale(root, 1 / scaled.extent))
+function rootsBeside(scaled: ScaledLoop, loop: FactoredLoop, node: Node): Complex[] {
+  const all = rootsAt(loop, node.k * scaled.gainUnit).map(root => complex.scale(root, 1 / scaled.extent))
   for (const { place, multiplicity } of node.meetings) {
     for (const meeting of place.im > 0 ? [place, complex.conjugate(place)] : [place]) {
       all.sort((a, b) => complex.distance(a, meeting) - complex.distance(b, meeting))
@@ -76,6 +76,11 @@ function rootsBeside(scaled: ScaledLoop, { numerator, denominator }: FactoredLoo
     }
   }
   return all
+}
+
+function rootsAt({ numerator, denominator, deadTime }: FactoredLoop, gain: number): Complex[] {
+  if (deadTime > 0) return delayedRoots({ numerator: polynomial.scale(numerator, gain), denominator, deadTime }).poles
+  return roots(polynomial.combine(1, denominator, gain, numerator))
 }
 
 /** Whether every meeting has its roots about it: where the local expansion misjudges the way, they may still be far. */

@@ -1,9 +1,10 @@
 import * as complex from '../../numerics/complex'
 import type { Complex } from '../../numerics/complex'
+import { delayFactor } from '../delay/quasi-polynomial'
 import type { FactoredLoop } from './factored-loop'
 
 /**
- * The loop in units of its own figure: z = s/extent, and a gain k with P(z) + sign k Z(z) = 0, P and Z monic. Tracing in these units needs no
+ * The loop in units of its own figure: z = s/extent, and a gain k with P(z) + sign k Z(z) e^(-z deadTime) = 0, P and Z monic. Tracing in these units needs no
  * regard for physical sizes, and products of factors keep the accuracy of poles and zeros where coefficients lose it.
  */
 export interface ScaledLoop {
@@ -13,6 +14,8 @@ export interface ScaledLoop {
   sign: 1 | -1
   poles: Complex[]
   zeros: Complex[]
+  /** In units of 1/extent. */
+  deadTime: number
   /** What is left of the work that one drawing may take. */
   allowance: { moves: number }
 }
@@ -35,6 +38,7 @@ export function scaleLoop(loop: FactoredLoop, extent: number): ScaledLoop {
     sign: loop.gain > 0 ? 1 : -1,
     poles: shrink(loop.poles),
     zeros: shrink(loop.zeros),
+    deadTime: loop.deadTime * extent,
     allowance: { moves: mostMoves },
   }
 }
@@ -59,7 +63,7 @@ export function refine(loop: ScaledLoop, k: number, startRe: number, startIm: nu
   let im = real ? 0 : startIm
   for (let round = 0; round < newtonSteps; round++) {
     const p = product(loop.poles, re, im)
-    const z = product(loop.zeros, re, im)
+    const z = delayed(product(loop.zeros, re, im), loop.deadTime, re, im)
     const factor = loop.sign * k
     const slopeRe = p.slopeRe + factor * z.slopeRe
     const slopeIm = p.slopeIm + factor * z.slopeIm
@@ -84,8 +88,10 @@ export function refine(loop: ScaledLoop, k: number, startRe: number, startIm: nu
   return null
 }
 
+interface Value { re: number, im: number, slopeRe: number, slopeIm: number }
+
 /** prod(z - places) and its slope. */
-function product(places: Complex[], x: number, y: number): { re: number, im: number, slopeRe: number, slopeIm: number } {
+function product(places: Complex[], x: number, y: number): Value {
   let re = 1
   let im = 0
   let slopeRe = 0
@@ -103,12 +109,24 @@ function product(places: Complex[], x: number, y: number): { re: number, im: num
   return { re, im, slopeRe, slopeIm }
 }
 
+/** A value and its slope times e^(-z deadTime). */
+function delayed(value: Value, deadTime: number, x: number, y: number): Value {
+  if (deadTime === 0) return value
+  const { re, im } = delayFactor({ re: x, im: y }, deadTime)
+  const slopeRe = value.slopeRe - deadTime * value.re
+  const slopeIm = value.slopeIm - deadTime * value.im
+  return {
+    re: value.re * re - value.im * im, im: value.re * im + value.im * re,
+    slopeRe: slopeRe * re - slopeIm * im, slopeIm: slopeRe * im + slopeIm * re,
+  }
+}
+
 /**
  * How roots leave an m-fold root z0 of gain k0: (z - z0)^m = c (k - k0) to first order; c is returned.
  */
 export function spreadFactor(loop: ScaledLoop, k0: number, z0: Complex, m: number): Complex {
   const p = taylor(loop.poles, z0, m)
-  const z = taylor(loop.zeros, z0, m)
+  const z = delayedTaylor(taylor(loop.zeros, z0, m), loop.deadTime, z0)
   const highest = complex.add(p[m]!, complex.scale(z[m]!, loop.sign * k0))
   return complex.scale(complex.divide(z[0]!, highest), -loop.sign)
 }
@@ -121,4 +139,17 @@ function taylor(places: Complex[], z0: Complex, m: number): Complex[] {
     coefficients = coefficients.map((c, i) => complex.add(complex.multiply(c, gap), i > 0 ? coefficients[i - 1]! : complex.zero))
   }
   return coefficients
+}
+
+/** Taylor coefficients of a function times e^(-z deadTime) about z0. */
+function delayedTaylor(coefficients: Complex[], deadTime: number, z0: Complex): Complex[] {
+  if (deadTime === 0) return coefficients
+  const factor = delayFactor(z0, deadTime)
+  const series: number[] = [1]
+  for (let i = 1; i < coefficients.length; i++) series.push(series[i - 1]! * -deadTime / i)
+  return coefficients.map((_, n) => {
+    let sum: Complex = complex.zero
+    for (let i = 0; i <= n; i++) sum = complex.add(sum, complex.scale(coefficients[n - i]!, series[i]!))
+    return complex.multiply(sum, factor)
+  })
 }

@@ -67,25 +67,18 @@ function interpolate(values: Float64Array, position: number): number {
   return above / below
 }
 
-/** Derivative of the interpolating polynomial per node distance. */
+/** Derivative of the interpolating polynomial per node distance: that of degree 7 through its values at the nodes. */
 function slopeOf(values: Float64Array, position: number): number {
-  const nearest = Math.round(position)
-  if (position === nearest) {
+  const slopes = new Float64Array(nodesPerPiece)
+  for (let i = 0; i < nodesPerPiece; i++) {
+    if (position === Math.round(position) && i !== position) continue
     let slope = 0
     for (let j = 0; j < nodesPerPiece; j++) {
-      if (j !== nearest) slope += barycentric[j]! / barycentric[nearest]! * (values[j]! - values[nearest]!) / (nearest - j)
+      if (j !== i) slope += barycentric[j]! / barycentric[i]! * (values[j]! - values[i]!) / (i - j)
     }
-    return slope
+    slopes[i] = slope
   }
-  const here = interpolate(values, position)
-  let above = 0
-  let below = 0
-  for (let j = 0; j < nodesPerPiece; j++) {
-    const share = barycentric[j]! / (position - j)
-    above += share * (here - values[j]!) / (position - j)
-    below += share
-  }
-  return above / below
+  return interpolate(slopes, position)
 }
 
 /** What follows on the pieces, and what the signal tends to. */
@@ -136,7 +129,10 @@ export function trajectoryOf(signal: PiecewiseSignal, { remains, decays, impulsi
       const node = Math.ceil((t - signal.starts[i]!) / spacing - 1e-9) - 1
       return node >= 0 ? signal.starts[i]! + node * spacing : i === 0 ? 0 : signal.starts[i]! - signal.lengths[i - 1]! / last
     },
-    sample: (dt, count) => Array.from({ length: count }, (_, k) => k * dt < end ? signal.at(k * dt) : steady(k * dt) + (tail ? tail.transient(k * dt) : 0)),
+    sample(dt, count) {
+      const later = tail?.sample(dt, count)
+      return Array.from({ length: count }, (_, k) => k * dt < end ? signal.at(k * dt) : later ? later[k]! : steady(k * dt))
+    },
   }
 }
 

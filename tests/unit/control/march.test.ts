@@ -5,7 +5,7 @@ import { refine, scaleLoop, type ScaledLoop } from '#shared/control/locus/scaled
 
 /** 1/((s + 1)(s + 2)): real roots until they meet at k = 1/4. */
 function begin(): { loop: ScaledLoop, mover: Mover } {
-  const loop = scaleLoop(factor({ numerator: [1], denominator: [1, 3, 2] }), 1)
+  const loop = scaleLoop(factor({ numerator: [1], denominator: [1, 3, 2], deadTime: 0 }), 1)
   return { loop, mover: { ...refine(loop, 0.01, -1, 0, true)!, branch: { points: [] }, mirror: null } }
 }
 

@@ -24,7 +24,7 @@ export interface LoopFunctions {
 }
 
 /** u = (onError (r - H y) - onOutput y) / denominator; only rate feedback takes the output without the sensor. */
-interface ControllerPolynomials {
+export interface ControllerPolynomials {
   onError: number[]
   onOutput: number[]
   denominator: number[]
@@ -124,7 +124,8 @@ export function lagPlaces({ poleZeroRatio, zero }: { poleZeroRatio: number, zero
   return { zero, pole: poleZeroRatio * zero }
 }
 
-function controllerPolynomials(controller: Controller, gains: Gains): ControllerPolynomials {
+/** @throws InvalidInputError where the gains are not those of the form */
+export function controllerPolynomials(controller: Controller, gains: Gains): ControllerPolynomials {
   const names = gainNames[controller.form]
   if (Object.keys(gains).length !== names.length || !names.every(name => name in gains)) {
     throw new InvalidInputError('gains', `the ${controller.form} form has the gains ${names.join(', ')}`)

@@ -43,8 +43,11 @@ function balance(h: Float64Array, n: number): void {
   }
 }
 
-/** Householder reflections that leave zeros below the first subdiagonal. */
-export function toHessenberg(h: Float64Array, n: number, alongside: { column?: Float64Array, row?: Float64Array } = {}): void {
+/**
+ * Householder reflections that leave zeros below the first subdiagonal; the matrix is overwritten.
+ * @param vectors rows or columns that are brought to the same coordinates
+ */
+export function toHessenberg(h: Float64Array, n: number, vectors: readonly Float64Array[] = []): void {
   const v = new Float64Array(n)
   for (let k = 0; k < n - 2; k++) {
     let size = 0
@@ -65,9 +68,7 @@ export function toHessenberg(h: Float64Array, n: number, alongside: { column?: F
     }
     for (let j = 0; j < n; j++) reflect(i => h[i * n + j]!, (i, change) => { h[i * n + j]! += change })
     for (let j = 0; j < n; j++) reflect(i => h[j * n + i]!, (i, change) => { h[j * n + i]! += change })
-    const { column, row } = alongside
-    if (column) reflect(i => column[i]!, (i, change) => { column[i]! += change })
-    if (row) reflect(i => row[i]!, (i, change) => { row[i]! += change })
+    for (const vector of vectors) reflect(i => vector[i]!, (i, change) => { vector[i]! += change })
     for (let i = k + 2; i < n; i++) h[i * n + k] = 0
   }
 }

@@ -1,3 +1,5 @@
+import { solveInPlace } from './linear'
+
 /** Square matrices here are flat, row after row, so that the inner loops run over plain numbers. */
 
 /** Coefficients of the [13/13] Padé approximant of e^x. */
@@ -25,7 +27,7 @@ export function matrixExponential(a: Float64Array, n: number): Float64Array {
   const even = padeHalf(a2, a4, a6, n, 0)
   const sum = even.map((entry, i) => entry + odd[i]!)
   const difference = even.map((entry, i) => entry - odd[i]!)
-  let result = solveInPlace(difference, sum, n)
+  let result = solveInPlace(difference, sum, n, n)
   for (let i = 0; i < squarings; i++) result = product(result, result, n)
   return result
 }
@@ -72,38 +74,4 @@ function product(a: Float64Array, b: Float64Array, n: number): Float64Array {
     }
   }
   return result
-}
-
-/** X with A X = B by elimination with partial pivoting; overwrites both. */
-function solveInPlace(a: Float64Array, b: Float64Array, n: number): Float64Array {
-  for (let k = 0; k < n; k++) {
-    let pivot = k
-    for (let i = k + 1; i < n; i++) if (Math.abs(a[i * n + k]!) > Math.abs(a[pivot * n + k]!)) pivot = i
-    if (pivot !== k) {
-      swapRows(a, k, pivot, n)
-      swapRows(b, k, pivot, n)
-    }
-    for (let i = k + 1; i < n; i++) {
-      const factor = a[i * n + k]! / a[k * n + k]!
-      if (factor === 0) continue
-      for (let j = k + 1; j < n; j++) a[i * n + j]! -= factor * a[k * n + j]!
-      for (let j = 0; j < n; j++) b[i * n + j]! -= factor * b[k * n + j]!
-    }
-  }
-  for (let i = n - 1; i >= 0; i--) {
-    for (let k = i + 1; k < n; k++) {
-      const factor = a[i * n + k]!
-      if (factor !== 0) for (let j = 0; j < n; j++) b[i * n + j]! -= factor * b[k * n + j]!
-    }
-    for (let j = 0; j < n; j++) b[i * n + j]! /= a[i * n + i]!
-  }
-  return b
-}
-
-function swapRows(a: Float64Array, i: number, k: number, n: number): void {
-  for (let j = 0; j < n; j++) {
-    const entry = a[i * n + j]!
-    a[i * n + j] = a[k * n + j]!
-    a[k * n + j] = entry
-  }
 }

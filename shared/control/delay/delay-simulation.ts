@@ -1,8 +1,8 @@
-import type { Complex } from '../../numerics/complex'
 import { leading } from '../../numerics/polynomial'
 import { roots } from '../../numerics/roots'
 import type { LoopFunctions } from '../controller'
 import { NoAnswerError } from '../errors'
+import { gridOf } from '../response/grid'
 import { PiecewiseSignal } from '../response/piecewise'
 import { respond } from '../response/response'
 import { realise, sectionsOf } from '../response/state-space'
@@ -11,12 +11,6 @@ import { polynomialAt, type Trajectory } from '../response/trajectory'
 import { relativeDegree } from '../transfer-function'
 import type { ResponseInput, TransferFunction } from '../types'
 
-/** Turn (radians) of the fastest living pole over one piece: the polynomial of degree 8 through it is then good to 1e-10. */
-const pieceAngle = 1
-/** A pole is gone after so many of its time constants. */
-const lifetimes = 40
-/** Halvings of the dead time that a grid may take. */
-const finestGrid = 12
 /** Work that one response may take. */
 export const mostPieces = 60_000
 
@@ -104,21 +98,6 @@ export class DelaySimulation {
     })
     this.periods += 1
   }
-}
-
-/** Lengths of the pieces of one period, shorter after its start while fast poles live. */
-function gridOf(deadTime: number, poles: readonly Complex[], crossover: number): number[] {
-  const moving = poles.map(({ re, im }) => ({ speed: Math.hypot(re, im), life: re < 0 ? lifetimes / -re : Infinity }))
-  const lengths: number[] = []
-  const units = 2 ** finestGrid
-  for (let at = 0; at < units;) {
-    const fastest = moving.reduce((most, { speed, life }) => at / units * deadTime < life ? Math.max(most, speed) : most, crossover)
-    let size = units
-    while (size > 1 && (size / units * deadTime * fastest > pieceAngle || at % size !== 0)) size /= 2
-    lengths.push(size / units * deadTime)
-    at += size
-  }
-  return lengths
 }
 
 /** Weight of the impulse that a controller with a derivative makes of a step. */

@@ -1,20 +1,15 @@
 import { abs } from '../../numerics/complex'
-import * as polynomial from '../../numerics/polynomial'
 import type { ClosedLoop } from '../closed-loop'
 import type { LoopFunctions } from '../controller'
 import { figuresAlongGrid } from '../frequency/along-grid'
-import { stationaryError } from '../response/steady-state'
 import { delayedFrequency } from './delayed-frequency'
 import { delayedResponse } from './delayed-response'
 import { delayedRoots, delayedStable } from './delayed-roots'
-import { timesDelaySeries } from './quasi-polynomial'
-
-/** Powers of s at the origin that limits can feel. */
-const seriesDegree = 8
+import { delayedStationaryError } from './limits-at-rest'
 
 /** A loop with dead time: roots of the quasi-polynomial, responses by true delay, margins bracketed on the imaginary axis. */
 export function delayedLoop(functions: LoopFunctions): ClosedLoop {
-  const { loop, reference, deadTime } = functions
+  const { loop, deadTime } = functions
   const found = delayedRoots({ ...loop, deadTime })
   const stable = delayedStable(found)
   const { poles } = found
@@ -23,11 +18,7 @@ export function delayedLoop(functions: LoopFunctions): ClosedLoop {
     poles,
     stable,
     frequencyFigures: () => figuresAlongGrid(delayedFrequency(functions, poles), stable),
-    stationaryError(integrators) {
-      const series = (p: number[]) => timesDelaySeries(p, deadTime, seriesDegree)
-      const rest = polynomial.subtract(loop.numerator, reference.numerator)
-      return stationaryError({ numerator: polynomial.add(loop.denominator, series(rest)), denominator: polynomial.add(loop.denominator, series(loop.numerator)) }, integrators)
-    },
+    stationaryError: integrators => delayedStationaryError(functions, integrators),
     respondTo: input => delayedResponse(functions, input, poles, stable, fastest(functions, poles)),
   }
 }

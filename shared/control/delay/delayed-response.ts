@@ -4,14 +4,15 @@ import { evaluateAccurately } from '../../numerics/compensated'
 import * as polynomial from '../../numerics/polynomial'
 import type { LoopFunctions } from '../controller'
 import { NoAnswerError } from '../errors'
-import { remainingPolynomial, signalSize, sumOfModes } from '../response/modal-sum'
+import { signalSize, sumOfModes } from '../response/modal-sum'
 import type { Modes } from '../response/modal-walk'
 import { trajectoryOf, type PiecewiseSignal } from '../response/piecewise'
 import type { LoopResponse } from '../response/response'
 import { polynomialAt, type Trajectory } from '../response/trajectory'
 import type { ResponseInput } from '../types'
 import { DelaySimulation } from './delay-simulation'
-import { delayFactor, evaluateQuasi, timesDelaySeries, type QuasiPolynomial } from './quasi-polynomial'
+import { delayedRemains } from './limits-at-rest'
+import { delayFactor, evaluateQuasi, type QuasiPolynomial } from './quasi-polynomial'
 
 /** Periods of the dead time that are followed step by step before the roots take over: by then those left out have died away. */
 const periodsByStep = 10
@@ -23,9 +24,6 @@ const compared = periodsByStep - periodsCompared
 const extinct = 1e-14
 /** After so many time constants of the slowest root nothing moves. */
 const lifetimes = 40
-/** Powers of s at the origin that limits can feel. */
-const seriesDegree = 8
-
 /** A signal of the loop as a transform: p(s) e^(-s T) (or without the delay) over q(s) s^integrations. */
 interface Signal { numerator: number[], delayed: boolean }
 
@@ -44,7 +42,8 @@ export function delayedResponse(functions: LoopFunctions, input: ResponseInput, 
   const signals: [Signal, Signal] = input === 'disturbance-step'
     ? [{ numerator: disturbance.numerator, delayed: false }, { numerator: polynomial.scale(loop.numerator, -1), delayed: true }]
     : [{ numerator: reference.numerator, delayed: true }, { numerator: effort.numerator, delayed: false }]
-  const remains = signals.map(signal => remainsOf(signal, q, integrations))
+  const { output: outputRemains, effort: effortRemains } = delayedRemains(functions, input)
+  const remains = [outputRemains, effortRemains]
   simulation.extendTo(periodsByStep * deadTime)
   const tails = signals.map((signal, i) => tailOf(signal, q, poles, integrations, remains[i]!))
   const taken = [simulation.output, simulation.effort].every((pieces, i) => agree(pieces, tails[i]!, deadTime))
@@ -68,14 +67,6 @@ function growing(simulation: DelaySimulation, pieces: PiecewiseSignal): Trajecto
       return Array.from({ length: count }, (_, k) => pieces.at(k * dt))
     },
   }
-}
-
-/** What the poles at the origin leave: the delay by its power series there. */
-function remainsOf({ numerator, delayed }: Signal, q: QuasiPolynomial, integrators: number): number[] {
-  const series = (p: number[]) => timesDelaySeries(p, q.deadTime, seriesDegree)
-  return remainingPolynomial({
-    numerator: delayed ? series(numerator) : numerator, denominator: polynomial.add(q.denominator, series(q.numerator)), poles: [], integrators,
-  })
 }
 
 /** The sum over the roots: residues of the transform at each. */

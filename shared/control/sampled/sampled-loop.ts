@@ -1,7 +1,34 @@
 import type { ClosedLoop } from '../closed-loop'
 import type { LoopFunctions } from '../controller'
+import { delayedRemains, delayedStationaryError } from '../delay/limits-at-rest'
+import { figuresAlongGrid } from '../frequency/along-grid'
 import type { Controller, Gains, LoopModel, Sampling } from '../types'
+import { heldPlant } from './held-plant'
+import { sampledController } from './sampled-controller'
+import { sampledFrequency } from './sampled-frequency'
+import { sampledResponse } from './sampled-response'
+import { sampledRoots } from './sampled-roots'
 
-export function sampledLoop(_model: LoopModel, _controller: Controller, _gains: Gains, _functions: LoopFunctions, _sampling: Sampling): ClosedLoop {
-  throw new Error('todo')
+/**
+ * A loop whose controller runs at samples, its output held between: the exact hold-equivalent of plant and sensor, with dead time and computing delay.
+ *
+ * What it tends to in the end is what the continuous loop tends to, since hold and controller keep their gain at rest and the gain of their integrators.
+ */
+export function sampledLoop(model: LoopModel, controller: Controller, gains: Gains, functions: LoopFunctions, sampling: Sampling): ClosedLoop {
+  const { period } = sampling
+  const held = heldPlant(model, sampling)
+  const law = sampledController(controller, gains, period)
+  const { poles, stable } = sampledRoots(held, law, period)
+  const slowest = Math.max(...poles.map(pole => pole.re))
+  return {
+    functions,
+    poles,
+    stable,
+    frequencyFigures: () => figuresAlongGrid(sampledFrequency(held, law, functions, poles, period), stable),
+    stationaryError: integrators => delayedStationaryError(functions, integrators),
+    respondTo(input, amplitude) {
+      const limit = model.actuatorLimit === undefined ? Infinity : model.actuatorLimit / Math.abs(amplitude)
+      return sampledResponse({ held, controller: law, period, input, limit }, stable ? delayedRemains(functions, input) : null, slowest)
+    },
+  }
 }

@@ -1,0 +1,110 @@
+import { NoAnswerError } from '../errors'
+import { PiecewiseSignal, trajectoryOf } from '../response/piecewise'
+import type { LoopResponse } from '../response/response'
+import { nodesPerPiece, type StepPropagator } from '../response/step-propagator'
+import type { Trajectory } from '../response/trajectory'
+import type { ResponseInput } from '../types'
+import type { HeldPlant } from './held-plant'
+import type { SampledController } from './sampled-controller'
+import { control, heldValues, pushed, readAt, restingState, type SampledState } from './sampled-step'
+
+/** Work that one response may take. */
+const mostPieces = 60_000
+/** After so many time constants of the slowest root a figure no longer feels it. */
+const lifetimes = 18
+
+export interface SampledRun {
+  held: HeldPlant
+  controller: SampledController
+  period: number
+  input: ResponseInput
+  /** Bound on the size of the controller output; infinite for none. */
+  limit: number
+}
+
+/**
+ * The sampled loop followed period by period, with what the plant does between the samples: exact, since the plant's input is constant in each part of a period.
+ */
+class SampledSimulation {
+  readonly output = new PiecewiseSignal()
+  readonly effort = new PiecewiseSignal()
+  /** The last instant at which the limit held the controller back. */
+  limitedUntil = 0
+  private state: SampledState
+  private sample = 0
+
+  constructor(private readonly run: SampledRun) {
+    this.state = restingState(run.held, run.controller)
+  }
+
+  get time(): number {
+    return this.sample * this.run.period
+  }
+
+  get exhausted(): boolean {
+    return this.output.starts.length + this.run.held.older.length + this.run.held.newer.length > mostPieces
+  }
+
+  extendTo(t: number): void {
+    while (this.time < t && !this.exhausted) this.followPeriod()
+  }
+
+  private followPeriod(): void {
+    const { held, controller, period, input, limit } = this.run
+    const { y, m } = readAt(held, this.state)
+    const reference = input === 'reference-ramp' ? this.time : input === 'reference-step' ? 1 : 0
+    const disturbance = input === 'disturbance-step' ? 1 : 0
+    const { u: wanted, next } = control(controller, this.state.controller, reference - m, y)
+    const u = Math.max(-limit, Math.min(limit, wanted))
+    if (u !== wanted) this.limitedUntil = this.time + period
+    const { older, newer } = heldValues(this.state.sent, u)
+    let plant = this.state.plant
+    let start = this.time
+    const follow = (steps: readonly StepPropagator[], value: number) => {
+      for (const step of steps) {
+        this.output.add(start, step.length, step.valuesHeld(0, plant, value + disturbance))
+        plant = step.endHeld(plant, value + disturbance)
+        start += step.length
+      }
+    }
+    this.effort.add(this.time, period, new Float64Array(nodesPerPiece).fill(u))
+    follow(held.older, older)
+    follow(held.newer, newer)
+    this.state = { plant, controller: next, sent: pushed(this.state.sent, u) }
+    this.sample += 1
+  }
+}
+
+/**
+ * Output, with what it does between the samples, and held controller output after a unit input.
+ * @param remains what output and effort tend to, ascending powers of t; null in an unstable loop
+ * @param slowest real part of the slowest root, 1/s, < 0 in a stable loop
+ * @throws NoAnswerError where the period is so short against the loop that its end is not reached
+ */
+export function sampledResponse(run: SampledRun, remains: { output: number[], effort: number[] } | null, slowest: number): LoopResponse {
+  const simulation = new SampledSimulation(run)
+  if (remains === null) return { output: growing(simulation, simulation.output), effort: growing(simulation, simulation.effort) }
+  const life = lifetimes / -slowest
+  simulation.extendTo(life)
+  while (!simulation.exhausted && simulation.time < simulation.limitedUntil + life) simulation.extendTo(simulation.limitedUntil + life)
+  const settled = simulation.time >= life && simulation.time >= simulation.limitedUntil + life
+  if (!settled && run.limit === Infinity) {
+    throw new NoAnswerError('the sample period is so short against the rest of the loop that sampling makes no difference: leave it out', 'loop.samplePeriod')
+  }
+  return {
+    output: trajectoryOf(simulation.output, { remains: remains.output, decays: settled }),
+    effort: trajectoryOf(simulation.effort, { remains: remains.effort, decays: settled }),
+  }
+}
+
+/** A response without end: followed as far as it is asked for. */
+function growing(simulation: SampledSimulation, pieces: PiecewiseSignal): Trajectory {
+  simulation.extendTo(simulation.time + 1e-300)
+  return {
+    ...trajectoryOf(pieces, { remains: [0], decays: false }),
+    sample(dt, count) {
+      simulation.extendTo(dt * (count - 1) * (1 + 1e-12))
+      return Array.from({ length: count }, (_, k) => pieces.at(k * dt))
+    },
+  }
+}

@@ -10,7 +10,7 @@ import { estimateAt } from './estimate'
 import { placeGains, type Placement } from './placement'
 import { readAll } from './readings'
 import { sampleResponse } from './response/response'
-import type { Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
+import type { ContinuousDesign, Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
 import { judge } from './verdicts'
 
 /** Where the design stands: the wanted point, or gains as they are. */
@@ -56,6 +56,7 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
   const readings = readAll(closed, step, { amplitude, settlingBandPercent })
   const designPoint = asked ?? dominantPole(poles, functions.reference) ?? zero
   const verdicts = judge(options.requirements ?? [], readings, poles, stable)
+  const shown = sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), poles, response)
   return {
     gains: placement.gains,
     alternatives: placement.alternatives,
@@ -65,12 +66,26 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
     closedLoopPoles: poles,
     closedLoopZeros: isZero(functions.reference.numerator) ? [] : roots(functions.reference.numerator),
     stable,
-    response: sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), poles, response),
+    response: shown,
     readings,
     estimate: estimateAt(designPoint),
     dominance: null,
     verdicts,
     unmet: verdicts.filter(verdict => !verdict.met).length,
+    ...(model.sampling === undefined ? {} : { continuous: withoutSampling(model, controller, placement.gains, { ...response, duration: shown.time[shown.time.length - 1]! }) }),
+  }
+}
+
+/** The loop as it was designed, over the same time. */
+function withoutSampling(model: LoopModel, controller: Controller, gains: Gains, response: ResponseOptions): ContinuousDesign {
+  const { input = 'reference-step', amplitude = 1, settlingBandPercent = usualSettlingBandPercent } = response
+  const closed = closeLoop({ ...model, sampling: undefined }, controller, gains)
+  const step = closed.respondTo('reference-step', amplitude)
+  return {
+    stable: closed.stable,
+    closedLoopPoles: closed.poles,
+    response: sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), closed.poles, response),
+    readings: readAll(closed, step, { amplitude, settlingBandPercent }),
   }
 }
 

@@ -177,4 +177,14 @@ export interface DesignSolution {
   dominance: null
   verdicts: Verdict[]
   unmet: number
+  /** Present with a sampled controller: the same gains in the loop as it was designed, without sampling. */
+  continuous?: ContinuousDesign
+}
+
+export interface ContinuousDesign {
+  stable: boolean
+  closedLoopPoles: Complex[]
+  /** At the instants of the response beside it. */
+  response: DesignSolution['response']
+  readings: Readings
 }

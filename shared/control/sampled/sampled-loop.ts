@@ -19,7 +19,6 @@ export function sampledLoop(model: LoopModel, controller: Controller, gains: Gai
   const held = heldPlant(model, sampling)
   const law = sampledController(controller, gains, period)
   const { poles, stable } = sampledRoots(held, law, period)
-  const slowest = Math.max(...poles.map(pole => pole.re))
   return {
     functions,
     poles,
@@ -28,7 +27,7 @@ export function sampledLoop(model: LoopModel, controller: Controller, gains: Gai
     stationaryError: integrators => delayedStationaryError(functions, integrators),
     respondTo(input, amplitude) {
       const limit = model.actuatorLimit === undefined ? Infinity : model.actuatorLimit / Math.abs(amplitude)
-      return sampledResponse({ held, controller: law, period, input, limit }, stable ? delayedRemains(functions, input) : null, slowest)
+      return sampledResponse({ held, controller: law, period, input, limit }, stable ? delayedRemains(functions, input) : null, poles)
     },
   }
 }

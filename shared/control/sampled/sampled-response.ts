@@ -1,17 +1,18 @@
+import type { Complex } from '../../numerics/complex'
 import { NoAnswerError } from '../errors'
 import { PiecewiseSignal, trajectoryOf } from '../response/piecewise'
 import type { LoopResponse } from '../response/response'
 import { nodesPerPiece, type StepPropagator } from '../response/step-propagator'
 import type { Trajectory } from '../response/trajectory'
 import type { ResponseInput } from '../types'
+import { followCoarsely, lifeOf, quickLifeOf } from './coarse-tail'
 import type { HeldPlant } from './held-plant'
+import { periodMap } from './period-map'
 import type { SampledController } from './sampled-controller'
-import { control, heldValues, pushed, readAt, restingState, type SampledState } from './sampled-step'
+import { control, flat, heldValues, linearPeriod, pushed, readAt, restingState, type SampledState } from './sampled-step'
 
 /** Work that one response may take. */
 const mostPieces = 60_000
-/** After so many time constants of the slowest root a figure no longer feels it. */
-const lifetimes = 18
 
 export interface SampledRun {
   held: HeldPlant
@@ -49,6 +50,14 @@ class SampledSimulation {
     while (this.time < t && !this.exhausted) this.followPeriod()
   }
 
+  /** Follows the rest, in which only slow roots move, in longer strides. */
+  finish(poles: readonly Complex[], until: number): void {
+    const { held, controller, period, input } = this.run
+    const inputs = { reference: input === 'reference-step' ? 1 : 0, disturbance: input === 'disturbance-step' ? 1 : 0 }
+    const driven = flat(linearPeriod(held, controller, restingState(held, controller), inputs).next)
+    followCoarsely({ map: periodMap(held, controller), driven, period, poles }, this, flat(this.state), this.time, until)
+  }
+
   private followPeriod(): void {
     const { held, controller, period, input, limit } = this.run
     const { y, m } = readAt(held, this.state)
@@ -78,19 +87,22 @@ class SampledSimulation {
 /**
  * Output, with what it does between the samples, and held controller output after a unit input.
  * @param remains what output and effort tend to, ascending powers of t; null in an unstable loop
- * @param slowest real part of the slowest root, 1/s, < 0 in a stable loop
  * @throws NoAnswerError where the period is so short against the loop that its end is not reached
  */
-export function sampledResponse(run: SampledRun, remains: { output: number[], effort: number[] } | null, slowest: number): LoopResponse {
+export function sampledResponse(run: SampledRun, remains: { output: number[], effort: number[] } | null, poles: readonly Complex[]): LoopResponse {
   const simulation = new SampledSimulation(run)
   if (remains === null) return { output: growing(simulation, simulation.output), effort: growing(simulation, simulation.effort) }
-  const life = lifetimes / -slowest
-  simulation.extendTo(life)
-  while (!simulation.exhausted && simulation.time < simulation.limitedUntil + life) simulation.extendTo(simulation.limitedUntil + life)
-  const settled = simulation.time >= life && simulation.time >= simulation.limitedUntil + life
-  if (!settled && run.limit === Infinity) {
+  const life = Math.max(0, ...poles.map(lifeOf))
+  // A ramp never comes to rest: it is followed sample by sample for as long as it moves.
+  const coarse = run.input !== 'reference-ramp'
+  const quick = (coarse ? Math.max(0, ...poles.map(pole => quickLifeOf(pole, run.period))) : life) + 20 * run.period
+  simulation.extendTo(quick)
+  while (!simulation.exhausted && simulation.time < simulation.limitedUntil + quick) simulation.extendTo(simulation.limitedUntil + quick)
+  const settled = simulation.time >= simulation.limitedUntil + quick
+  if (!settled && run.limit === Infinity && coarse) {
     throw new NoAnswerError('the sample period is so short against the rest of the loop that sampling makes no difference: leave it out', 'loop.samplePeriod')
   }
+  if (settled && coarse) simulation.finish(poles, simulation.limitedUntil + life)
   return {
     output: trajectoryOf(simulation.output, { remains: remains.output, decays: settled }),
     effort: trajectoryOf(simulation.effort, { remains: remains.effort, decays: settled }),

@@ -35,12 +35,29 @@ export function heldValues(sent: Float64Array, u: number): { older: number, newe
   return { older: sent[sent.length - 1]!, newer: sent.length === 1 ? u : sent[sent.length - 2]! }
 }
 
-/** One period of the loop without input or limit. */
-export function freePeriod(held: HeldPlant, controller: SampledController, state: SampledState): SampledState {
+/** One period of the loop under a constant reference and disturbance, without a limit; with the output at its start and the controller's answer. */
+export function linearPeriod(held: HeldPlant, controller: SampledController, state: SampledState, { reference, disturbance }: { reference: number, disturbance: number }):
+{ next: SampledState, y: number, u: number } {
   const { y, m } = readAt(held, state)
-  const { u, next } = control(controller, state.controller, -m, y)
+  const { u, next } = control(controller, state.controller, reference - m, y)
   const { older, newer } = heldValues(state.sent, u)
-  return { plant: carry(held.newer, carry(held.older, state.plant, older), newer), controller: next, sent: pushed(state.sent, u) }
+  const plant = carry(held.newer, carry(held.older, state.plant, older + disturbance), newer + disturbance)
+  return { next: { plant, controller: next, sent: pushed(state.sent, u) }, y, u }
+}
+
+/** All entries of a state in one array: plant, controller, outputs on their way. */
+export function flat({ plant, controller, sent }: SampledState): Float64Array {
+  return Float64Array.from([...plant, ...controller, ...sent])
+}
+
+/** The state with one entry of 1, all others 0. */
+export function unitState(held: HeldPlant, controller: SampledController, j: number): SampledState {
+  const state = restingState(held, controller)
+  const { plant, controller: law, sent } = state
+  if (j < plant.length) plant[j] = 1
+  else if (j < plant.length + law.length) law[j - plant.length] = 1
+  else sent[j - plant.length - law.length] = 1
+  return state
 }
 
 export function pushed(sent: Float64Array, u: number): Float64Array {

@@ -1,0 +1,72 @@
+import type { Complex } from '../../numerics/complex'
+import { solveLinear } from '../../numerics/linear'
+import { applyMatrix } from '../../numerics/matrix-exponential'
+import type { PiecewiseSignal } from '../response/piecewise'
+import { nodesPerPiece } from '../response/step-propagator'
+import type { PeriodMap } from './period-map'
+
+/** A root is gone once it has decayed by this power of e. */
+const gone = Math.log(1e9)
+/** Share of the signal that what happens between samples may be off by, once it is no longer followed. */
+const ripple = 1e-7
+const pieceAngle = 1
+const last = nodesPerPiece - 1
+
+/** Seconds until a root is gone. */
+export function lifeOf({ re }: Complex): number {
+  return gone / -re
+}
+
+/**
+ * Seconds for which a root must be followed between the samples too: the plant's corners there are (|s| period)^2/8 of the root's share, and a stride of several
+ * periods must not pass over its turns.
+ */
+export function quickLifeOf(root: Complex, period: number): number {
+  const turn = Math.hypot(root.re, root.im) * period
+  if (turn * last > pieceAngle) return lifeOf(root)
+  return Math.min(lifeOf(root), Math.log(Math.max(1, turn * turn / 8 / ripple)) / -root.re)
+}
+
+/**
+ * The end of a sampled response, when only roots move that are slow against the period: values at every 2^n-th sample, ever further apart as roots die out.
+ * @param driven what one period adds to the state at rest under the input
+ * @param state at `from`
+ */
+export function followCoarsely(
+  { map, driven, period, poles }: { map: PeriodMap, driven: Float64Array, period: number, poles: readonly Complex[] },
+  signals: { output: PiecewiseSignal, effort: PiecewiseSignal }, state: Float64Array, from: number, until: number,
+): void {
+  const { size, matrix } = map
+  const rest = solveLinear(matrix.map((entry, i) => (i % (size + 1) === 0 ? 1 : 0) - entry), driven, size, 1)
+  const level = (row: Float64Array) => row.reduce((sum, weight, i) => sum + weight * rest[i]!, 0)
+  const [output, effort] = [level(map.output), level(map.effort)]
+  let away: Float64Array = state.map((entry, i) => entry - rest[i]!)
+  let stride = 1
+  let power = matrix
+  for (let t = from; t < until;) {
+    const fastest = poles.reduce((most, { re, im }) => t * -re < gone ? Math.max(most, Math.hypot(re, im)) : most, 0)
+    while (2 * stride * last * period * fastest <= pieceAngle && stride < 2 ** 30) {
+      power = squared(power, size)
+      stride *= 2
+    }
+    const nodes = [away]
+    for (let i = 0; i < last; i++) nodes.push(applyMatrix(power, nodes[i]!))
+    const values = (row: Float64Array, offset: number) => Float64Array.from(nodes, node => row.reduce((sum, weight, i) => sum + weight * node[i]!, offset))
+    const length = last * stride * period
+    signals.output.add(t, length, values(map.output, output))
+    signals.effort.add(t, length, values(map.effort, effort))
+    away = nodes[last]!
+    t += length
+  }
+}
+
+function squared(a: Float64Array, n: number): Float64Array {
+  const result = new Float64Array(n * n)
+  for (let i = 0; i < n; i++) {
+    for (let k = 0; k < n; k++) {
+      const factor = a[i * n + k]!
+      if (factor !== 0) for (let j = 0; j < n; j++) result[i * n + j]! += factor * a[k * n + j]!
+    }
+  }
+  return result
+}

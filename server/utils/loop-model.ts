@@ -1,4 +1,4 @@
-import { InvalidInputError, NoAnswerError } from '#shared/control/errors'
+import { InvalidInputError } from '#shared/control/errors'
 import { transferFunction } from '#shared/control/transfer-function'
 import type { Controller, LoopModel, ThirdCondition, TransferFunction } from '#shared/control/types'
 import type { Complex } from '#shared/numerics/complex'
@@ -12,12 +12,17 @@ import { parseFormula } from './expression/parse-formula'
  *
  * @param path the field of the request that carries the loop
  * @throws InvalidInputError for a plant that is no proper ratio of polynomials, with the field to change
- * @throws NoAnswerError for fields that this version does not compute yet
  */
 export function resolveLoop(loop: Loop, path = 'loop'): LoopModel {
-  refuseUnavailable(loop, path)
   const sensor = loop.sensor === undefined ? {} : { sensor: resolvePlant(loop.sensor, `${path}.sensor`, 'sensor') }
-  return { plant: resolvePlant(loop.plant, `${path}.plant`), ...sensor, rateFeedback: loop.rateFeedback ?? 0 }
+  return {
+    plant: resolvePlant(loop.plant, `${path}.plant`),
+    ...sensor,
+    rateFeedback: loop.rateFeedback ?? 0,
+    deadTime: loop.deadTime ?? 0,
+    actuatorLimit: loop.actuatorLimit,
+    sampling: loop.samplePeriod === undefined ? undefined : { period: loop.samplePeriod, computingDelay: loop.computingDelay === 'one-sample' },
+  }
 }
 
 /** The controller, when its form is available. */
@@ -35,17 +40,6 @@ function thirdCondition({ integralToDerivativeRatio, thirdPole }: Extract<Contro
     throw new InvalidInputError(path, 'give exactly one of integralToDerivativeRatio and thirdPole: it settles the third gain')
   }
   return thirdPole === undefined ? { integralToDerivativeRatio: integralToDerivativeRatio! } : { pole: thirdPole }
-}
-
-function refuseUnavailable(loop: Loop, path: string) {
-  const unavailable: [keyof Loop, boolean, string][] = [
-    ['deadTime', (loop.deadTime ?? 0) > 0, 'Dead time'],
-    ['actuatorLimit', loop.actuatorLimit !== undefined, 'An actuator limit'],
-    ['samplePeriod', loop.samplePeriod !== undefined, 'A sample period'],
-  ]
-  for (const [field, given, what] of unavailable) {
-    if (given) throw new NoAnswerError(`${what} is not available yet.`, `${path}.${field}`)
-  }
 }
 
 function resolvePlant(plant: Plant, path: string, noun = 'plant'): TransferFunction {

@@ -31,6 +31,9 @@ export function analyzeLoop(model: LoopModel, controller: Controller, options: A
   throw new NoAnswerError('the poles and zeros of this loop lie too far apart to draw one locus of them')
 }
 
+/** Of a dead time that is drawn, in the time scale of the figure. */
+const longestDelay = 60
+
 interface AnalysisOptions {
   dampingRatio?: number
   gains?: Gains
@@ -56,7 +59,9 @@ function analyze(model: LoopModel, controller: Controller, options: AnalysisOpti
     ...crossings.slice(0, open.deadTime > 0 ? 1 : undefined).map(({ frequency }) => ({ re: 0, im: frequency })),
   ], loop)
   const drawnMeetings = drawn.poles.length === loop.poles.length ? meetings : breakaways(drawn)
-  const branches = drawn.poles.length === 0 ? [] : traceBranches(drawn, drawnMeetings, beyond, extent)
+  // With a dead time beyond all the loop's own times the delay's branches fill the plane: nothing to be seen in a drawing.
+  const drawable = drawn.poles.length > 0 && open.deadTime * extent <= longestDelay
+  const branches = !drawable ? [] : traceBranches(drawn, drawnMeetings, beyond, extent)
   const last = Math.max(1, ...branches.flatMap(({ points }) => points[points.length - 1]![2]))
   return {
     openLoop: {

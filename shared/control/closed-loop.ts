@@ -8,6 +8,7 @@ import { sensitivityPeak } from './frequency/sensitivity'
 import { limitedResponse } from './limited/limited-response'
 import { respondTo, type LoopResponse } from './response/response'
 import { stationaryError } from './response/steady-state'
+import { fullWork, type Work } from './response/work'
 import { sampledLoop } from './sampled/sampled-loop'
 import { diesOut } from './stability'
 import type { Controller, Gains, LoopModel, Readings, ResponseInput } from './types'
@@ -32,16 +33,18 @@ export interface ClosedLoop {
 export type FrequencyFigures = Margins & Pick<Readings, 'sensitivityPeak' | 'bandwidth'>
 
 /**
+ * @param work what simulations of this loop may take of it, all together
  * @throws InvalidInputError where the gains are not those of the form
- * @throws NoAnswerError for an algebraic loop and for a loop beyond what can be followed
+ * @throws NoAnswerError for an algebraic loop
+ * @throws TooMuchWorkError, from its responses, where following them to the end would take more than `work`
  */
-export function closeLoop(model: LoopModel, controller: Controller, gains: Gains): ClosedLoop {
+export function closeLoop(model: LoopModel, controller: Controller, gains: Gains, work: Work = fullWork()): ClosedLoop {
   const functions = loopFunctions(model, controller, gains)
-  if (model.sampling !== undefined) return sampledLoop(model, controller, gains, functions, model.sampling)
-  const loop = functions.deadTime > 0 ? delayedLoop(functions) : rationalLoop(functions)
+  if (model.sampling !== undefined) return sampledLoop(model, controller, gains, functions, model.sampling, work)
+  const loop = functions.deadTime > 0 ? delayedLoop(functions, work) : rationalLoop(functions)
   const { actuatorLimit } = model
   if (actuatorLimit === undefined) return loop
-  return { ...loop, respondTo: (input, amplitude) => limitedResponse(loop, input, amplitude, actuatorLimit) }
+  return { ...loop, respondTo: (input, amplitude) => limitedResponse(loop, input, amplitude, actuatorLimit, work) }
 }
 
 function rationalLoop(functions: LoopFunctions): ClosedLoop {

@@ -13,3 +13,11 @@ export class NoAnswerError extends Error {
     this.name = 'NoAnswerError'
   }
 }
+
+/** The answer would take more work than one request may: said at once, and never mistaken for an answer. */
+export class TooMuchWorkError extends NoAnswerError {
+  constructor(message: string, path?: string) {
+    super(message, path)
+    this.name = 'TooMuchWorkError'
+  }
+}

@@ -1,8 +1,8 @@
-import { closeLoop } from './closed-loop'
+import { closeLoop, type ClosedLoop } from './closed-loop'
 import { openLoop } from './controller'
-import { NoAnswerError } from './errors'
+import { NoAnswerError, TooMuchWorkError } from './errors'
 import { imaginaryAxisCrossings } from './locus/crossings'
-import { readAll } from './readings'
+import { readAll, type ReadingOptions } from './readings'
 import { scaleGains } from './scale-gains'
 import type { Controller, Gains, GainWindow, Interval, LoopModel, ReadingName, Requirement } from './types'
 import { judge } from './verdicts'
@@ -13,6 +13,8 @@ const domain: Interval = [1e-3, 1e3]
 const perDecade = 8
 /** Edges are found to this, relative. */
 const edgeAccuracy = 1e-6
+/** Pieces of responses followed step by step that all samples may take together. */
+const mostPieces = 150_000
 /** Levels of halving where a reading comes near its limit between samples and turns back. */
 const deepest = 6
 
@@ -30,24 +32,26 @@ interface Sample {
  * every edge bisected to 1e-6.
  * @param gains the present ones; all are multiplied (zero and pole of a lead or lag stay)
  */
-export function gainWindow(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], settlingBandPercent = 2): GainWindow {
-  const sampleAt = (x: number): Sample => ({ x, room: roomAt(model, controller, scaleGains(gains, Math.exp(x)), requirements, settlingBandPercent) })
+export function gainWindow(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], options: ReadingOptions = { amplitude: 1, settlingBandPercent: 2 }): GainWindow {
+  const work = { pieces: mostPieces }
+  const sampleAt = (x: number): Sample => ({ x, room: roomAt(() => closeLoop(model, controller, scaleGains(gains, Math.exp(x)), work), requirements, options) })
   const samples = refineTurns(firstPlaces(model, controller, gains).map(sampleAt), sampleAt)
   const byRequirement = requirements.map((requirement, index) => ({ ...requirement, intervals: intervalsOf(samples, index, sampleAt) }))
   const window = byRequirement.reduce<Interval[]>((common, { intervals }) => intersect(common, intervals), [domain])
   return { window, byRequirement, tightest: tightestOf(window, byRequirement) }
 }
 
-function roomAt(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], settlingBandPercent: number): number[] {
+function roomAt(close: () => ClosedLoop, requirements: readonly Requirement[], options: ReadingOptions): number[] {
   try {
-    const closed = closeLoop(model, controller, gains)
-    const readings = readAll(closed, closed.respondTo('reference-step', 1), { amplitude: 1, settlingBandPercent })
+    const closed = close()
+    const readings = readAll(closed, closed.respondTo('reference-step', options.amplitude), options)
     return judge(requirements, readings, closed.poles, closed.stable).map(({ actual, limit, value, met }) => {
       const room = actual === null ? Infinity : Math.abs(limit === 'at-most' ? value - actual : actual - value)
       return met ? room : -room
     })
   }
   catch (error) {
+    if (error instanceof TooMuchWorkError) throw error
     // An algebraic loop, or numbers out of range: nothing is met there.
     if (error instanceof NoAnswerError || error instanceof RangeError) return requirements.map(() => -Infinity)
     throw error

@@ -54,7 +54,7 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
   const { functions, poles, stable } = closed
   const step = closed.respondTo('reference-step', amplitude)
   const readings = readAll(closed, step, { amplitude, settlingBandPercent })
-  const designPoint = asked ?? dominantPole(poles, functions.reference) ?? zero
+  const designPoint = asked ?? dominantPole(poles, functions) ?? zero
   const verdicts = judge(options.requirements ?? [], readings, poles, stable)
   const shown = sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), poles, response)
   return {

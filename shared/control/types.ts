@@ -160,6 +160,15 @@ export interface ResponseOptions {
   settlingBandPercent?: number
 }
 
+export interface SampledSignals {
+  input: ResponseInput
+  time: number[]
+  output: number[]
+  effort: number[]
+  /** With an actuator limit: seconds until which it cut the controller output off, 0 where it never did; null: it does so for ever. */
+  limitedUntil?: number | null
+}
+
 export interface DesignSolution {
   gains: Gains
   alternatives: Gains[]
@@ -169,7 +178,7 @@ export interface DesignSolution {
   closedLoopPoles: Complex[]
   closedLoopZeros: Complex[]
   stable: boolean
-  response: { input: ResponseInput, time: number[], output: number[], effort: number[] }
+  response: SampledSignals
   readings: Readings
   /** The second-order rules of thumb at the design point. */
   estimate: { overshootPercent: number | null, peakTime: number | null, settlingTime: number | null, riseTime: number | null }
@@ -185,6 +194,6 @@ export interface ContinuousDesign {
   stable: boolean
   closedLoopPoles: Complex[]
   /** At the instants of the response beside it. */
-  response: DesignSolution['response']
+  response: SampledSignals
   readings: Readings
 }

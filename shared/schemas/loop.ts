@@ -46,14 +46,16 @@ const transferFunctionSchema = z.strictObject({
   denominator: coefficients('the denominator'),
 })
 
-/** Fields that docs/http-contract.md names and this version does not compute yet are accepted here and refused with a 422 by the loop resolver. */
 export const loopSchema = z.strictObject({
   plant: plantSchema,
   sensor: plantSchema.optional(),
   rateFeedback: finiteNumber.optional(),
-  deadTime: z.number().min(0).optional(),
-  actuatorLimit: z.number().positive().optional(),
-  samplePeriod: z.number().positive().optional(),
+  deadTime: z.number().min(0, 'a dead time is 0 or greater').optional(),
+  actuatorLimit: z.number().positive('a limit is greater than 0; leave it out where there is none').optional(),
+  samplePeriod: z.number().positive('a sample period is greater than 0; leave it out for a continuous controller').optional(),
+  computingDelay: z.enum(['none', 'one-sample']).optional(),
+}).refine(loop => loop.computingDelay === undefined || loop.samplePeriod !== undefined, {
+  path: ['computingDelay'], message: 'a computing delay belongs to a sampled controller: give its samplePeriod too',
 })
 
 /** Seconds; absent: an ideal derivative. */

@@ -111,7 +111,11 @@ describe('bad input', () => {
     ['an unknown reading', { ...good, requirements: [{ reading: 'colour', limit: 'at-most', value: 1 }] }, 400, 'requirements.0.reading'],
     ['too many requirements', { ...good, requirements: Array(17).fill({ reading: 'riseTime', limit: 'at-most', value: 1 }) }, 400, 'requirements'],
     ['a PID with two third conditions', { ...good, controller: { form: 'pid', thirdPole: -3, integralToDerivativeRatio: 4 } }, 400, 'controller'],
-    ['dead time', { ...good, loop: { ...loop, deadTime: 0.1 } }, 422, 'loop.deadTime'],
+    ['a negative dead time', { ...good, loop: { ...loop, deadTime: -0.1 } }, 400, 'loop.deadTime'],
+    ['a sample period of nothing', { ...good, loop: { ...loop, samplePeriod: 0 } }, 400, 'loop.samplePeriod'],
+    ['a computing delay without sampling', { ...good, loop: { ...loop, computingDelay: 'none' } }, 400, 'loop.computingDelay'],
+    ['a limit of nothing', { ...good, loop: { ...loop, actuatorLimit: 0 } }, 400, 'loop.actuatorLimit'],
+    ['a dead time of a thousand samples', { ...good, loop: { ...loop, deadTime: 1, samplePeriod: 0.001 } }, 422, 'loop.samplePeriod'],
     ['a lead that cannot reach the point', { ...good, controller: { form: 'lead', poleZeroRatio: 1.0001 }, designPoint: { re: -0.1, im: 9 } }, 422, ''],
   ])('%s is refused by field and reason', async (_what, body, status, path) => {
     const answer = await client.post<ErrorBody>('/api/design/solve', body)

@@ -12,6 +12,7 @@ export default defineEventHandler(async (event) => {
   return compute(event, () => {
     const [model, controller] = [resolveLoop(body.loop), resolveController(body.controller)]
     const { gains } = placementOf(model, controller, designTarget(body))
-    return gainWindow(model, controller, gains, body.requirements, body.response?.settlingBandPercent)
+    const { amplitude = 1, settlingBandPercent = 2 } = body.response ?? {}
+    return gainWindow(model, controller, gains, body.requirements, { amplitude, settlingBandPercent })
   })
 })

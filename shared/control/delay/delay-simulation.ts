@@ -7,12 +7,10 @@ import { PiecewiseSignal } from '../response/piecewise'
 import { respond } from '../response/response'
 import { realise, sectionsOf } from '../response/state-space'
 import { nodesPerPiece, StepPropagator } from '../response/step-propagator'
+import type { Work } from '../response/work'
 import { polynomialAt, type Trajectory } from '../response/trajectory'
 import { relativeDegree } from '../transfer-function'
 import type { ResponseInput, TransferFunction } from '../types'
-
-/** Work that one response may take. */
-export const mostPieces = 60_000
 
 /**
  * A closed loop with dead time, followed period of the dead time by period: what the plant gets now is what the controller put out one dead time ago, so each
@@ -32,12 +30,14 @@ export class DelaySimulation {
   /** Controller output of the period before, piece by piece. */
   private before: Float64Array[]
   private periods = 0
+  /** The last instant at which the limit cut the controller output off. */
+  limitedUntil = 0
 
   /**
    * @param crossover rad/s: up to here the loop acts on what comes back, and the grid resolves it
    * @param limit bound on the size of the controller output
    */
-  constructor(private readonly functions: LoopFunctions, input: ResponseInput, crossover: number, private readonly limit = Infinity) {
+  constructor(private readonly functions: LoopFunctions, input: ResponseInput, crossover: number, private readonly work: Work, private readonly limit = Infinity) {
     const { loop, disturbance, controller, deadTime } = functions
     const poles = roots(loop.denominator)
     const system = realise(sectionsOf(poles), loop.denominator)
@@ -69,7 +69,7 @@ export class DelaySimulation {
 
   /** Whether the next period would be beyond the work that one response may take. */
   get exhausted(): boolean {
-    return (this.periods + 1) * this.grid.length > mostPieces
+    return this.work.pieces < this.grid.length
   }
 
   /** Follows the loop to t or as far as its allowance of work goes. */
@@ -81,6 +81,7 @@ export class DelaySimulation {
     const { grid, disturbed } = this
     if (this.periods === 1 && this.impulse !== 0) this.state = this.state.map((value, i) => value + this.kick[i]! * this.impulse)
     let start = this.time
+    this.work.pieces -= grid.length
     this.before = grid.map((step, piece) => {
       const w = disturbed === 0 ? this.before[piece]! : this.before[piece]!.map(value => value + disturbed)
       const y = step.values(0, this.state, w)
@@ -89,6 +90,7 @@ export class DelaySimulation {
         const t = start + step.length * node / (nodesPerPiece - 1)
         const wanted = polynomialAt(this.free.remains, t) + this.free.transient(t) - u[node]!
         u[node] = Math.max(-this.limit, Math.min(this.limit, wanted))
+        if (u[node] !== wanted) this.limitedUntil = t
       }
       this.output.add(start, step.length, y)
       this.effort.add(start, step.length, u)

@@ -2,13 +2,14 @@ import { abs } from '../../numerics/complex'
 import type { ClosedLoop } from '../closed-loop'
 import type { LoopFunctions } from '../controller'
 import { figuresAlongGrid } from '../frequency/along-grid'
+import type { Work } from '../response/work'
 import { delayedFrequency } from './delayed-frequency'
 import { delayedResponse } from './delayed-response'
 import { delayedRoots, delayedStable } from './delayed-roots'
 import { delayedStationaryError } from './limits-at-rest'
 
 /** A loop with dead time: roots of the quasi-polynomial, responses by true delay, margins bracketed on the imaginary axis. */
-export function delayedLoop(functions: LoopFunctions): ClosedLoop {
+export function delayedLoop(functions: LoopFunctions, work: Work): ClosedLoop {
   const { loop, deadTime } = functions
   const found = delayedRoots({ ...loop, deadTime })
   const stable = delayedStable(found)
@@ -19,11 +20,11 @@ export function delayedLoop(functions: LoopFunctions): ClosedLoop {
     stable,
     frequencyFigures: () => figuresAlongGrid(delayedFrequency(functions, poles), stable),
     stationaryError: integrators => delayedStationaryError(functions, integrators),
-    respondTo: input => delayedResponse(functions, input, poles, stable, fastest(functions, poles)),
+    respondTo: input => delayedResponse(functions, input, poles, stable, actingSpeed(functions, poles), work),
   }
 }
 
 /** rad/s up to which the loop acts on what comes back: the speed of its roots, but for the chain that the delay brings. */
-function fastest({ deadTime }: LoopFunctions, poles: ClosedLoop['poles']): number {
+export function actingSpeed({ deadTime }: LoopFunctions, poles: ClosedLoop['poles']): number {
   return poles.reduce((most, pole) => pole.re > -3 / deadTime && abs(pole) < 8 / deadTime ? Math.max(most, abs(pole)) : most, 0)
 }

@@ -12,12 +12,14 @@ const padeOrder = 8
 const highestOrder = 40
 /** Roots of the delay's own chain that are looked for, beyond those up to the highest gain crossover. */
 const chainBeyond = 8
-const longestChain = 200
+const longestChain = 60
 const chainRounds = 20
 const newtonRounds = 30
 /** A step this small (relative) ends the polishing; a residual above `residual` of the terms' size is no root. */
 const settled = 1e-15
 const residual = 1e-9
+/** Slope (relative) below which a root is double: the two are then closer than its square root. */
+const doubled = 1e-6
 /** Roots closer than this (relative) are one, found twice. */
 const same = 1e-7
 
@@ -52,13 +54,19 @@ function rootsInUnits(q: QuasiPolynomial): DelayedRoots {
     if (root === null || root.im < 0) continue
     if (!upper.some(other => complex.distance(other, root) <= same * Math.max(complex.abs(root), 1e-3 / q.deadTime))) upper.push(root)
   }
-  const poles = upper.flatMap(root => root.im === 0 ? [root] : [root, complex.conjugate(root)]).sort(byPlace)
+  const poles = upper.flatMap(root => isDouble(q, root) ? [root, root] : [root]).flatMap(root => root.im === 0 ? [root] : [root, complex.conjugate(root)]).sort(byPlace)
   return { poles, unstable }
 }
 
 /** Whether every one of the infinitely many roots dies out. */
 export function delayedStable({ poles, unstable }: DelayedRoots): boolean {
   return unstable === 0 && poles.every(diesOut)
+}
+
+/** Two roots that coincide up to rounding end the polishing on one place, where the slope is gone too. */
+function isDouble(q: QuasiPolynomial, root: Complex): boolean {
+  const { slope, size } = evaluateQuasi(q, root)
+  return complex.abs(slope) * complex.abs(root) <= doubled * size
 }
 
 interface GainCrossover { frequency: number, /** Sign of d(|D|^2 - |N|^2)/dw: 1 where roots move right with growing dead time. */ sense: number }

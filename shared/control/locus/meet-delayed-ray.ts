@@ -11,6 +11,8 @@ import type { Meeting } from './meet-ray'
 const turn = 0.2
 const ratio = 1.05
 const mostPlaces = 6000
+/** Of the meetings that go on for ever so many are told. */
+const mostMeetings = 12
 /** The delay's own chain of branches meets every ray for ever; so many turns of the delay beyond the poles and zeros are looked at. */
 const turnsBeyond = 2
 /** Distances of the grid about the place where the line passes a pole or zero, in shares of how near it passes. */
@@ -20,7 +22,7 @@ const onLocus = 1e-7
 
 /**
  * Where the half line s = r direction, r > 0, meets the locus of a loop with dead time, nearest the origin first: bracketed on a fine grid of r, then found by a
- * bracketing root finder. Of the infinitely many the nearest ones: to twice the farthest pole or zero and two turns of the delay beyond.
+ * bracketing root finder. Of the infinitely many the nearest ones: a dozen at most, to twice the farthest pole or zero and two turns of the delay beyond.
  * @param direction of size 1, not along the real axis
  */
 export function meetDelayedRay(open: DelayedFunction, direction: Complex): Meeting[] {
@@ -28,6 +30,7 @@ export function meetDelayedRay(open: DelayedFunction, direction: Complex): Meeti
   const meetings: Meeting[] = []
   let before: { r: number, lack: number } | null = null
   for (const r of gridOf(open, direction)) {
+    if (meetings.length === mostMeetings) break
     const here = { r, lack: lack(r) }
     if (before && Math.sign(before.lack) * Math.sign(here.lack) === -1 && Math.abs(before.lack - here.lack) < Math.PI) {
       const radius = findRoot(lack, before.r, r)

@@ -27,7 +27,12 @@ export function respond(g: TransferFunction, poles: readonly Complex[], integrat
 }
 
 /** Output and controller output of the closed loop after one input of size 1. */
-export interface LoopResponse { output: Trajectory, effort: Trajectory }
+export interface LoopResponse {
+  output: Trajectory
+  effort: Trajectory
+  /** With a limit on the controller output: the last instant at which it cut the output off (0: never; infinite: for ever). */
+  limitedUntil?: number
+}
 
 /** The loop's answer to an input; the disturbance enters at the plant input. */
 export function respondTo(input: ResponseInput, functions: LoopFunctions, poles: readonly Complex[]): LoopResponse {
@@ -55,5 +60,6 @@ export function sampleResponse(response: LoopResponse, poles: readonly Complex[]
     time,
     output: scaled(response.output.sample(dt, samples)),
     effort: scaled(response.effort.sample(dt, samples)),
+    ...(response.limitedUntil === undefined ? {} : { limitedUntil: Number.isFinite(response.limitedUntil) ? response.limitedUntil : null }),
   }
 }

@@ -3,6 +3,7 @@ import type { LoopFunctions } from '../controller'
 import { delayedRemains, delayedStationaryError } from '../delay/limits-at-rest'
 import { figuresAlongGrid } from '../frequency/along-grid'
 import type { Controller, Gains, LoopModel, Sampling } from '../types'
+import type { Work } from '../response/work'
 import { heldPlant } from './held-plant'
 import { sampledController } from './sampled-controller'
 import { sampledFrequency } from './sampled-frequency'
@@ -14,7 +15,7 @@ import { sampledRoots } from './sampled-roots'
  *
  * What it tends to in the end is what the continuous loop tends to, since hold and controller keep their gain at rest and the gain of their integrators.
  */
-export function sampledLoop(model: LoopModel, controller: Controller, gains: Gains, functions: LoopFunctions, sampling: Sampling): ClosedLoop {
+export function sampledLoop(model: LoopModel, controller: Controller, gains: Gains, functions: LoopFunctions, sampling: Sampling, work: Work): ClosedLoop {
   const { period } = sampling
   const held = heldPlant(model, sampling)
   const law = sampledController(controller, gains, period)
@@ -27,7 +28,7 @@ export function sampledLoop(model: LoopModel, controller: Controller, gains: Gai
     stationaryError: integrators => delayedStationaryError(functions, integrators),
     respondTo(input, amplitude) {
       const limit = model.actuatorLimit === undefined ? Infinity : model.actuatorLimit / Math.abs(amplitude)
-      return sampledResponse({ held, controller: law, period, input, limit }, stable ? delayedRemains(functions, input) : null, poles)
+      return sampledResponse({ held, controller: law, period, input, limit, work }, stable ? delayedRemains(functions, input) : null, poles)
     },
   }
 }

@@ -1,8 +1,8 @@
 import type { Complex } from '../../numerics/complex'
-import { NoAnswerError } from '../errors'
 import { PiecewiseSignal, trajectoryOf } from '../response/piecewise'
 import type { LoopResponse } from '../response/response'
 import { nodesPerPiece, type StepPropagator } from '../response/step-propagator'
+import { refuseMoreWork, type Work } from '../response/work'
 import type { Trajectory } from '../response/trajectory'
 import type { ResponseInput } from '../types'
 import { followCoarsely, lifeOf, quickLifeOf } from './coarse-tail'
@@ -11,8 +11,8 @@ import { periodMap } from './period-map'
 import type { SampledController } from './sampled-controller'
 import { control, flat, heldValues, linearPeriod, pushed, readAt, restingState, type SampledState } from './sampled-step'
 
-/** Work that one response may take. */
-const mostPieces = 60_000
+/** A loop that its limit does not let come to rest is given up after so many lives of its slowest root. */
+const mostLives = 8
 
 export interface SampledRun {
   held: HeldPlant
@@ -21,6 +21,7 @@ export interface SampledRun {
   input: ResponseInput
   /** Bound on the size of the controller output; infinite for none. */
   limit: number
+  work: Work
 }
 
 /**
@@ -43,7 +44,7 @@ class SampledSimulation {
   }
 
   get exhausted(): boolean {
-    return this.output.starts.length + this.run.held.older.length + this.run.held.newer.length > mostPieces
+    return this.run.work.pieces < this.run.held.older.length + this.run.held.newer.length
   }
 
   extendTo(t: number): void {
@@ -60,6 +61,7 @@ class SampledSimulation {
 
   private followPeriod(): void {
     const { held, controller, period, input, limit } = this.run
+    this.run.work.pieces -= held.older.length + held.newer.length
     const { y, m } = readAt(held, this.state)
     const reference = input === 'reference-ramp' ? this.time : input === 'reference-step' ? 1 : 0
     const disturbance = input === 'disturbance-step' ? 1 : 0
@@ -87,7 +89,7 @@ class SampledSimulation {
 /**
  * Output, with what it does between the samples, and held controller output after a unit input.
  * @param remains what output and effort tend to, ascending powers of t; null in an unstable loop
- * @throws NoAnswerError where the period is so short against the loop that its end is not reached
+ * @throws TooMuchWorkError where the period is so short against the loop that its end is not reached
  */
 export function sampledResponse(run: SampledRun, remains: { output: number[], effort: number[] } | null, poles: readonly Complex[]): LoopResponse {
   const simulation = new SampledSimulation(run)
@@ -97,15 +99,16 @@ export function sampledResponse(run: SampledRun, remains: { output: number[], ef
   const coarse = run.input !== 'reference-ramp'
   const quick = (coarse ? Math.max(0, ...poles.map(pole => quickLifeOf(pole, run.period))) : life) + 20 * run.period
   simulation.extendTo(quick)
-  while (!simulation.exhausted && simulation.time < simulation.limitedUntil + quick) simulation.extendTo(simulation.limitedUntil + quick)
-  const settled = simulation.time >= simulation.limitedUntil + quick
-  if (!settled && run.limit === Infinity && coarse) {
-    throw new NoAnswerError('the sample period is so short against the rest of the loop that sampling makes no difference: leave it out', 'loop.samplePeriod')
-  }
+  const reachable = !coarse || Math.abs(remains.effort[0]!) < run.limit
+  const most = mostLives * (life + quick)
+  while (reachable && !simulation.exhausted && simulation.time < Math.min(most, simulation.limitedUntil + quick)) simulation.extendTo(simulation.limitedUntil + quick)
+  const settled = reachable && simulation.time >= simulation.limitedUntil + quick
+  if (simulation.exhausted) refuseMoreWork('loop.samplePeriod')
   if (settled && coarse) simulation.finish(poles, simulation.limitedUntil + life)
   return {
     output: trajectoryOf(simulation.output, { remains: remains.output, decays: settled }),
     effort: trajectoryOf(simulation.effort, { remains: remains.effort, decays: settled }),
+    ...(run.limit === Infinity ? {} : { limitedUntil: settled ? simulation.limitedUntil : Infinity }),
   }
 }
 

@@ -46,17 +46,11 @@ describe('a loop of a request', () => {
     expect((error as InvalidInputError).path).toBe(path)
   })
 
-  it.each([
-    [{ plant, deadTime: 0.1 }, 'loop.deadTime'], [{ plant, samplePeriod: 0.1 }, 'loop.samplePeriod'],
-    [{ plant, actuatorLimit: 1 }, 'loop.actuatorLimit'],
-  ])('says what is not available yet', (loop, path) => {
-    const error = thrown(() => resolveLoop(asLoop(loop)))
-    expect(error).toBeInstanceOf(NoAnswerError)
-    expect(error).toMatchObject({ path, message: expect.stringContaining('not available yet') })
-  })
-
-  it('takes a dead time of zero as none', () => {
-    expect(resolveLoop(asLoop({ plant, deadTime: 0 })).rateFeedback).toBe(0)
+  it('takes dead time, limit and sampling as they are given, and none where they are not', () => {
+    expect(resolveLoop(asLoop({ plant }))).toMatchObject({ rateFeedback: 0, deadTime: 0, actuatorLimit: undefined, sampling: undefined })
+    expect(resolveLoop(asLoop({ plant, deadTime: 0.02, actuatorLimit: 4, samplePeriod: 0.001 })))
+      .toMatchObject({ deadTime: 0.02, actuatorLimit: 4, sampling: { period: 0.001, computingDelay: false } })
+    expect(resolveLoop(asLoop({ plant, samplePeriod: 0.001, computingDelay: 'one-sample' })).sampling).toEqual({ period: 0.001, computingDelay: true })
   })
 
   it('takes a sensor in any form of a plant, and names its fields', () => {

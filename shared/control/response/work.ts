@@ -1,0 +1,16 @@
+import { TooMuchWorkError } from '../errors'
+
+/** What is left of the pieces (of a response followed step by step) that one answer may take. */
+export interface Work { pieces: number }
+
+/** Some tenths of a second at worst; a loop that means something takes a few hundred. */
+const mostPieces = 40_000
+
+export function fullWork(): Work {
+  return { pieces: mostPieces }
+}
+
+/** @throws TooMuchWorkError, which says what may be changed about it */
+export function refuseMoreWork(path?: string): never {
+  throw new TooMuchWorkError('this response moves at paces too far apart to be followed from its start to its end: leave out the fastest or the slowest part of the loop', path)
+}

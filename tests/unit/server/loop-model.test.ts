@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { InvalidInputError, NoAnswerError } from '#shared/control/errors'
+import { InvalidInputError } from '#shared/control/errors'
 import type { ControllerForm, Loop } from '#shared/schemas/loop'
 import { resolveController, resolveLoop } from '../../../server/utils/loop-model'
 

@@ -33,9 +33,10 @@ export type Order = (one: Trial, other: Trial) => boolean
 
 /** Evaluates a design by the one door that everything else goes through; two samples of the response, since only its figures are wanted. */
 export function evaluate({ model, controller, requirements, response }: Problem, target: DesignTarget, timeScale: number): Trial {
+  const { amplitude, settlingBandPercent } = response
   try {
     const { gains, designPoint, stable, readings, verdicts, unmet } = solveDesign(model, controller, target, {
-      requirements, response: { ...response, samples: 2, duration: timeScale },
+      requirements, response: { amplitude, settlingBandPercent, samples: 2, duration: timeScale },
     })
     const { settlingTime } = readings
     const hindrance = !stable ? unstable : hasNegative(gains) ? negativeGain : settlingTime === null ? unsettled : null

@@ -20,6 +20,7 @@ export function paintHand(context: Context, scene: HandScene): void {
   paintFlags(context, scene)
   paintGrip(context, scene)
   paintLeftover(context, scene)
+  paintGhost(context, scene)
   paintPoint(context, scene)
   paintHover(context, scene)
   paintPointLabel(context, scene)
@@ -99,6 +100,17 @@ function paintLeftover(context: Context, { viewport, colors, point, leftoverDeg,
     { x: x + (radius + 6) * Math.cos(angle), y: y - (radius + 6) * Math.sin(angle) },
   ] as const
   strokeLines(context, [leg(to)], color, 1.6)
+}
+
+/** The outline of the design point where it may go. */
+function paintGhost(context: Context, { viewport, colors, ghost }: HandScene): void {
+  if (!ghost) return
+  circle(context, toScreen(viewport, ghost), ringRadius)
+  context.setLineDash([4, 3])
+  context.strokeStyle = paint(colors.vermilion)
+  context.lineWidth = 1.8
+  context.stroke()
+  context.setLineDash([])
 }
 
 /** A ring with a hair cross; on the locus it is filled and carries the lozenge of the root that it has become. */

@@ -24,6 +24,8 @@ export interface HandScene {
   /** Where the design point is drawn: its place, or on its way there. */
   point: Complex
   grip: ScreenPoint | null
+  /** A point that one may go to. */
+  ghost: Complex | null
   meetings: Complex[]
   roots: Complex[]
   /** The design point is a closed-loop root, exactly. */

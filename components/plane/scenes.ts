@@ -14,6 +14,7 @@ interface Figures {
   requirements: Requirement[]
   reachesEveryPoint: boolean
   stale: boolean
+  ghost: Complex | null
 }
 
 interface Hand {
@@ -55,6 +56,7 @@ export function composeScenes(
     ...frame.value,
     point: under.drawn.value,
     grip: gripPosition(frame.value.viewport, under.drawn.value),
+    ghost: figures.ghost,
     meetings: under.meetings.value,
     roots: figures.solution?.closedLoopPoles ?? [],
     onLocus: onLocus.value,

@@ -16,9 +16,14 @@ const limiters = {
   write: new RateLimiterMemory({ points: 600, duration: 60 }),
 }
 
-/** Event streams open at the same time from one address: a page holds one. */
-const streamsPerAddress = 200
-const openStreams = new Map<string, number>()
+/**
+ * What may be open at the same time from one address. A page holds one event stream. Of searches a second one may begin while the first, given up a
+ * moment ago, has not yet heard of it.
+ */
+const openAtOnce = {
+  streams: { most: 200, waitSeconds: 30, open: new Map<string, number>() },
+  searches: { most: 2, waitSeconds: 5, open: new Map<string, number>() },
+}
 
 // Without the event: settings do not change between requests, and asking per event reads the whole environment anew each time.
 const isOff = () => useRuntimeConfig().rateLimits === 'off'
@@ -89,15 +94,21 @@ export async function forgiveSignIn(event: H3Event, email: string) {
   await limiters.signInToAccount.delete(accountFromAddress(event, email))
 }
 
-/** Guard: one more open stream from this address. The answer takes it off the count again. */
-export function limitStreams(event: H3Event): () => void {
+function limitOpen(event: H3Event, name: keyof typeof openAtOnce): () => void {
+  const { most, waitSeconds, open } = openAtOnce[name]
   const address = callerAddress(event)
-  const count = openStreams.get(address) ?? 0
-  if (count >= streamsPerAddress && !isOff()) throw refuse(event, 30)
-  openStreams.set(address, count + 1)
+  const count = open.get(address) ?? 0
+  if (count >= most && !isOff()) throw refuse(event, waitSeconds)
+  open.set(address, count + 1)
   return () => {
-    const left = (openStreams.get(address) ?? 1) - 1
-    if (left > 0) openStreams.set(address, left)
-    else openStreams.delete(address)
+    const left = (open.get(address) ?? 1) - 1
+    if (left > 0) open.set(address, left)
+    else open.delete(address)
   }
 }
+
+/** Guard: one more open stream from this address. The answer takes it off the count again. */
+export const limitStreams = (event: H3Event) => limitOpen(event, 'streams')
+
+/** Guard: one more search from this address. The answer takes it off the count again. */
+export const limitSearches = (event: H3Event) => limitOpen(event, 'searches')

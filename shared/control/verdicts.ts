@@ -36,3 +36,15 @@ function isMet({ reading, limit, value }: Requirement, actual: number | null, st
 function leastDamping(poles: readonly Complex[]): number | null {
   return poles.length === 0 ? null : Math.min(...poles.map(dampingRatioOf))
 }
+
+/**
+ * By how much a requirement is missed, as a share of its limit or of the reading, whichever is larger: 0 where it is met, 1 where there is no figure or
+ * the limit is 0, at most 2.
+ */
+export function shortfall({ reading, value, actual, met }: Verdict): number {
+  if (met) return 0
+  if (actual === null) return 1
+  const figure = limitedInSize.includes(reading) ? Math.abs(actual) : actual
+  const size = Math.max(Math.abs(value), Math.abs(figure))
+  return size === 0 ? 1 : Math.abs(figure - value) / size
+}

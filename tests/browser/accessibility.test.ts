@@ -45,6 +45,10 @@ describe.each([
 
     const bench = await new BenchPage(page).open('/')
     await look('the bench')
+    await page.getByText('Find the best point').click()
+    await page.getByRole('button', { name: 'Best in the plane' }).click()
+    await page.locator('[data-test="best-go"]').waitFor()
+    await look('the bench with a best point found')
     await bench.type('zeta', 'brisk')
     await look('the bench with an error beside a field')
     await page.goto('/sign-in')

@@ -45,6 +45,11 @@ describe.each([
 
     const bench = await new BenchPage(page).open('/')
     await look('the bench')
+    await page.locator('[data-test="tab-frequency"]').click()
+    await page.locator('[data-test="frequency-chart"]').focus()
+    await page.keyboard.press('End')
+    await page.locator('[data-test="frequency-reads"]').first().waitFor()
+    await look('the bench with the loop over frequency')
     await bench.type('zeta', 'brisk')
     await look('the bench with an error beside a field')
     await page.goto('/sign-in')

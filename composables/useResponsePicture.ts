@@ -50,7 +50,7 @@ function referenceOf(input: DesignSolution['response']['input'], time: readonly 
 }
 
 function panels(width: number, height: number, time: readonly number[], outputRange: Range, effortRange: Range) {
-  const shared = { left: margin.left, right: width - margin.right, time: { min: 0, max: time.at(-1)! } }
+  const shared = { left: margin.left, right: width - margin.right, along: { min: 0, max: time.at(-1)! } }
   const room = height - margin.top - margin.bottom - margin.between
   const parting = margin.top + room * (1 - effortShare)
   const output: Panel = { ...shared, top: margin.top, bottom: parting, value: outputRange }

@@ -1,6 +1,7 @@
 import type { Context } from 'konva/lib/Context'
 import { nearestRoot } from '~/utils/bench/nearest-root'
 import { flagSize } from '~/utils/plane/flags'
+import { formatNumber } from '~/utils/plane/labels'
 import { rayAngle, visibleRay } from '~/utils/plane/ray'
 import { isInView, toScreen, type ScreenPoint } from '~/utils/plane/viewport'
 import { paint } from '~/utils/plane/colors'
@@ -22,6 +23,7 @@ export function paintHand(context: Context, scene: HandScene): void {
   paintLeftover(context, scene)
   paintGhost(context, scene)
   paintPoint(context, scene)
+  paintFrequency(context, scene)
   paintHover(context, scene)
   paintPointLabel(context, scene)
 }
@@ -165,4 +167,17 @@ function paintHover(context: Context, { viewport, colors, hover }: HandScene): v
   const width = context.measureText(hover.label).width
   const x = at.x + 14 + width > viewport.width - 6 ? at.x - 14 - width : at.x + 14
   writeText(context, hover.label, { x, y: Math.max(12, at.y - 14) }, { color: paint(colors.ink), halo: paint(colors.paper) })
+}
+
+/** A short bar across the imaginary axis at jw, and its figure. */
+function paintFrequency(context: Context, { viewport, colors, frequency }: HandScene): void {
+  if (frequency === null) return
+  const { x, y } = toScreen(viewport, { re: 0, im: frequency })
+  if (!isInView(viewport, { x, y })) return
+  const bar = [{ x: x - 10, y }, { x: x + 10, y }] as const
+  strokeLines(context, [bar], paint(colors.paper), 6)
+  strokeLines(context, [bar], paint(colors.ink), 2.4)
+  context.font = font(12, 600)
+  const onRight = x + 80 < viewport.width
+  writeText(context, `${formatNumber(frequency)}j`, { x: onRight ? x + 16 : x - 16, y }, { color: paint(colors.ink), halo: paint(colors.paper), align: onRight ? 'left' : 'right' })
 }

@@ -37,6 +37,8 @@ export interface HandScene {
   flags: FlagPlace<{ number: number, selected: boolean }>[]
   /** The place on the locus under the pointer, and its gain in words. */
   hover: { point: Complex, label: string } | null
+  /** rad/s: pointed at in the frequency view. */
+  frequency: number | null
   turning: boolean
   /** Places that labels keep clear of, such as poles and zeros. */
   marks: Complex[]

@@ -24,6 +24,7 @@ interface Hand {
   meetings: ComputedRef<Complex[]>
   flags: ComputedRef<FlagPlace<{ number: number, selected: boolean }>[]>
   hover: ComputedRef<HandScene['hover']>
+  frequency: () => number | null
   turning: () => boolean
 }
 
@@ -64,6 +65,7 @@ export function composeScenes(
     stale: figures.stale,
     flags: under.flags.value,
     hover: under.hover.value,
+    frequency: under.frequency(),
     turning: under.turning(),
     marks: marks.value,
     memory,

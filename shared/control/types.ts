@@ -197,3 +197,16 @@ export interface ContinuousDesign {
   response: SampledSignals
   readings: Readings
 }
+
+/** A loop over frequency: L, S = 1/(1 + L) and T = L/(1 + L), broken at the plant input. Lists of one length. */
+export interface FrequencyResponse {
+  /** rad/s, rising. */
+  frequency: number[]
+  magnitudeDb: number[]
+  /** Degrees, unwrapped. */
+  phaseDeg: number[]
+  sensitivityDb: number[]
+  complementaryDb: number[]
+  /** rad/s: where |S| is largest; null where that is at 0, at infinity or infinite. */
+  sensitivityPeakFrequency: number | null
+}

@@ -1,30 +1,27 @@
-const golden = (Math.sqrt(5) - 1) / 2
+/** The golden section: what is left of an interval after each step. */
+const share = (Math.sqrt(5) - 1) / 2
+/** A maximum is flat: its place is known to half the digits of its value, and no step beyond that tells more. */
+const finest = 2 ** -26
 
 /**
- * The largest value of a continuous function with one maximum between two points, by golden-section search (J. Kiefer, 1953). Near a smooth maximum the value is
- * good to the square of the tolerance.
- * @param tolerance width of the last bracket relative to |x|
+ * The place of a maximum of f within [from, to], by golden section (J. Kiefer, "Sequential minimax search for a maximum", 1953). Where f has several
+ * maxima there, it is one of them; where it has none inside, the nearer end.
  */
-export function findMaximum(f: (x: number) => number, from: number, to: number, tolerance = 1e-7): { x: number, value: number } {
+export function findMaximum(f: (x: number) => number, from: number, to: number): number {
   let [a, b] = [from, to]
-  let x = b - golden * (b - a)
-  let y = a + golden * (b - a)
-  let [fx, fy] = [f(x), f(y)]
-  while (Math.abs(b - a) > tolerance * (Math.abs(a) + Math.abs(b))) {
-    if (fx >= fy) {
-      b = y
-      y = x
-      fy = fx
-      x = b - golden * (b - a)
-      fx = f(x)
+  let [left, right] = [b - share * (b - a), a + share * (b - a)]
+  let [atLeft, atRight] = [f(left), f(right)]
+  while (b - a > finest * Math.max(Math.abs(a), Math.abs(b)) && left < right) {
+    if (atLeft >= atRight) {
+      [b, right, atRight] = [right, left, atLeft]
+      left = b - share * (b - a)
+      atLeft = f(left)
     }
     else {
-      a = x
-      x = y
-      fx = fy
-      y = a + golden * (b - a)
-      fy = f(y)
+      [a, left, atLeft] = [left, right, atRight]
+      right = a + share * (b - a)
+      atRight = f(right)
     }
   }
-  return fx >= fy ? { x, value: fx } : { x: y, value: fy }
+  return (a + b) / 2
 }

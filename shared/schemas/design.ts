@@ -35,11 +35,13 @@ export const gainsSchema = z.union([
   z.strictObject({ k: finiteNumber, zero: finiteNumber, pole: finiteNumber }),
 ])
 
+const samplesSchema = z.number().int().min(limits.samples.least).max(limits.samples.most)
+
 export const responseOptionsSchema = z.strictObject({
   input: z.enum(['reference-step', 'reference-ramp', 'disturbance-step']).optional(),
   amplitude: finiteNumber.refine(amplitude => amplitude !== 0, 'the amplitude is not zero').optional(),
   duration: z.number().positive().optional(),
-  samples: z.number().int().min(limits.samples.least).max(limits.samples.most).optional(),
+  samples: samplesSchema.optional(),
   settlingBandPercent: z.number().gt(0).lt(100).optional(),
 })
 
@@ -50,19 +52,34 @@ export const analyzeBodySchema = z.strictObject({
   gains: gainsSchema.optional(),
 })
 
-/** Exactly one of designPoint and gains says where the design stands. */
-export const solveBodySchema = z.strictObject({
+/** A loop and where its design stands, which exactly one of designPoint and gains says. */
+const placedLoop = {
   loop: loopSchema,
   controller: controllerSchema,
   designPoint: designPointSchema.optional(),
   gains: gainsSchema.optional(),
+}
+const standsOnce = (body: { designPoint?: unknown, gains?: unknown }) => (body.designPoint === undefined) !== (body.gains === undefined)
+const standsTwice = { path: ['designPoint'], message: 'give either designPoint or gains' }
+
+export const solveBodySchema = z.strictObject({
+  ...placedLoop,
   requirements: requirementsSchema.default([]),
   response: responseOptionsSchema.optional(),
-}).refine(body => (body.designPoint === undefined) !== (body.gains === undefined), {
-  path: ['designPoint'], message: 'give either designPoint or gains',
-})
+}).refine(standsOnce, standsTwice)
+
+const frequency = z.number().min(limits.frequency.least).max(limits.frequency.most)
+
+export const frequencyBodySchema = z.strictObject({
+  ...placedLoop,
+  from: frequency.optional(),
+  to: frequency.optional(),
+  samples: samplesSchema.optional(),
+}).refine(standsOnce, standsTwice)
+  .refine(({ from, to }) => from === undefined || to === undefined || from < to, { path: ['to'], message: 'the range ends above where it begins' })
 
 export type DesignPointInput = z.infer<typeof designPointSchema>
 export type RequirementInput = z.infer<typeof requirementSchema>
 export type AnalyzeBody = z.infer<typeof analyzeBodySchema>
 export type SolveBody = z.infer<typeof solveBodySchema>
+export type FrequencyBody = z.infer<typeof frequencyBodySchema>

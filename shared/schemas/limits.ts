@@ -9,6 +9,8 @@ export const limits = {
   parameterUnit: 32,
   requirements: 16,
   samples: { least: 20, most: 2000 },
+  /** rad/s. */
+  frequency: { least: 1e-12, most: 1e12 },
   title: 120,
   name: 80,
   machine: 80,

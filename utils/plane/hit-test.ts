@@ -1,5 +1,5 @@
 import type { Complex } from '#shared/numerics/complex'
-import { toScreen, type ScreenPoint, type Viewport } from './viewport'
+import { toScreen, toWorld, type ScreenPoint, type Viewport } from './viewport'
 
 /** Radii in pixels within which a press takes hold; a finger is less exact than a mouse. */
 export const reach = {
@@ -7,6 +7,7 @@ export const reach = {
   grip: { mouse: 24, touch: 34 },
   tick: { mouse: 12, touch: 24 },
   locus: { mouse: 10, touch: 18 },
+  axis: { mouse: 8 },
 } as const
 
 export interface Targets {
@@ -52,4 +53,11 @@ export function nearestTick(
     best = { meeting, at: place }
   }
   return best
+}
+
+/** The frequency, rad/s, that a pointer near the positive imaginary axis rests on; null anywhere else. */
+export function frequencyUnder(viewport: Viewport, at: ScreenPoint): number | null {
+  const { im } = toWorld(viewport, at)
+  const away = Math.abs(at.x - toScreen(viewport, { re: 0, im }).x)
+  return im > 0 && away <= reach.axis.mouse ? im : null
 }

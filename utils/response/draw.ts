@@ -5,12 +5,13 @@ export interface Panel {
   right: number
   top: number
   bottom: number
-  time: Range
+  /** Seconds, or decades of frequency. */
+  along: Range
   value: Range
 }
 
-export function xOf({ left, right, time }: Panel, at: number): number {
-  return left + (at - time.min) / (time.max - time.min) * (right - left)
+export function xOf({ left, right, along }: Panel, at: number): number {
+  return left + (at - along.min) / (along.max - along.min) * (right - left)
 }
 
 export function yOf({ top, bottom, value }: Panel, at: number): number {
@@ -18,9 +19,9 @@ export function yOf({ top, bottom, value }: Panel, at: number): number {
 }
 
 /** The path of a curve in an SVG; points far outside the panel are drawn at its rim, where they are clipped. */
-export function curvePath(panel: Panel, time: readonly number[], values: readonly number[]): string {
+export function curvePath(panel: Panel, along: readonly number[], values: readonly number[]): string {
   const reach = panel.bottom - panel.top
-  return time.map((at, index) => {
+  return along.map((at, index) => {
     const y = Math.max(panel.top - reach, Math.min(panel.bottom + reach, yOf(panel, values[index]!)))
     return `${index === 0 ? 'M' : 'L'}${xOf(panel, at).toFixed(1)} ${y.toFixed(1)}`
   }).join('')

@@ -86,7 +86,7 @@ function sensitivityPeak({ loop, loopAtZero }: PointwiseLoop, samples: Sample[])
   sizes.forEach((here, i) => {
     best = Math.max(best, here)
     if (i === 0 || i + 1 === sizes.length || here < sizes[i - 1]! || here < sizes[i + 1]!) return
-    best = Math.max(best, findMaximum(w => size(loop(w)), samples[i - 1]!.w, samples[i + 1]!.w).value)
+    best = Math.max(best, size(loop(findMaximum(w => size(loop(w)), samples[i - 1]!.w, samples[i + 1]!.w))))
   })
   return best < boundless ? best : null
 }

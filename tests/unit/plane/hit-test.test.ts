@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { hitTest, nearestTick, type Targets } from '~/utils/plane/hit-test'
+import { frequencyUnder, hitTest, nearestTick, type Targets } from '~/utils/plane/hit-test'
+import { toScreen } from '~/utils/plane/viewport'
 
 const targets: Targets = {
   viewport: { center: { re: 0, im: 0 }, scale: 100, width: 600, height: 400 },
@@ -34,5 +35,12 @@ describe('hit test', () => {
   it('names the meeting under a press', () => {
     expect(hitTest({ x: 283, y: 183 }, targets, false)).toEqual({ kind: 'plane', tick: { re: -0.2, im: 0.2 } })
     expect(nearestTick({ x: 283, y: 183 }, targets, 3)).toBeNull()
+  })
+
+  it('reads a frequency off the positive imaginary axis, near it and nowhere else', () => {
+    const at = toScreen(targets.viewport, { re: 0, im: 0.5 })
+    expect(frequencyUnder(targets.viewport, { x: at.x - 7, y: at.y })).toBeCloseTo(0.5, 12)
+    expect(frequencyUnder(targets.viewport, { x: at.x + 9, y: at.y })).toBeNull()
+    expect(frequencyUnder(targets.viewport, toScreen(targets.viewport, { re: 0, im: -0.5 }))).toBeNull()
   })
 })

@@ -6,7 +6,7 @@ import { calmDuration } from '~/utils/bench/calm-duration'
 import type { DesignSolution } from '#shared/control/types'
 import { seededRandom } from '../../helpers/random'
 
-const panel: Panel = { left: 50, right: 250, top: 10, bottom: 110, time: { min: 0, max: 10 }, value: { min: 0, max: 2 } }
+const panel: Panel = { left: 50, right: 250, top: 10, bottom: 110, along: { min: 0, max: 10 }, value: { min: 0, max: 2 } }
 
 describe('scales of the response strip', () => {
   it('takes round steps', () => {

@@ -1,0 +1,123 @@
+import { findMaximum } from '../../numerics/find-maximum'
+import * as polynomial from '../../numerics/polynomial'
+import { roots } from '../../numerics/roots'
+import { toDegrees } from '../angle'
+import type { LoopFunctions } from '../controller'
+import { NoAnswerError } from '../errors'
+import { cancelCommon, cancellationWidth, factor, type FactoredLoop } from '../locus/factored-loop'
+import type { FrequencyResponse } from '../types'
+import { sampleFrequencies, usualRange } from './sample-frequencies'
+
+export interface FrequencyOptions {
+  /** rad/s; where absent, half a decade to one and a half beyond the break frequencies, at whole decades. */
+  from?: number
+  to?: number
+  /** Of the even grid; more points stand round lightly damped roots. */
+  samples?: number
+  /** Seconds by which the loop answers late: e^(-jwT) turns its phase by -wT. */
+  deadTime?: number
+}
+
+const usualSamples = 400
+/** Beyond this, in either direction, a figure in dB is that of a pole or zero on the imaginary axis. */
+const mostDb = 400
+/** A root this close to the imaginary axis, against its size, lies on it as far as rounding lets it be told. */
+const onAxis = 1e-12
+/** A sensitivity beyond this belongs to a closed-loop root on the imaginary axis: there is no peak. */
+const boundless = Math.log(1e12)
+/** How much further than the grid, in either direction, the ends of the frequency axis are taken to lie. */
+const farAway = 1e9
+
+/** ln |L|, arg L in radians (unwrapped), ln |S| and ln |T| at one frequency. */
+interface Sample { magnitude: number, phase: number, sensitivity: number, complementary: number }
+
+/**
+ * The loop on the imaginary axis: L(jw), S = 1/(1 + L) and T = L/(1 + L), the loop broken at the plant input.
+ *
+ * The phase is the sum of the angles of the poles and zeros, each followed continuously from w = 0, so that it is unwrapped by itself; it begins at
+ * -90 degrees for each free integrator, 180 degrees lower where the gain at low frequency is negative. A root on the axis turns the phase as the limit
+ * of one to the left of it does. S and T follow from ln |L| and arg L, whichever of L and 1/L is the smaller, so that nothing overflows. Figures in
+ * dB end at +-400. Source: K. J. Astrom, R. M. Murray, "Feedback Systems", chapters on frequency domain analysis and design.
+ *
+ * @param functions at the present gains
+ * @param options.samples from 2 on; `from` < `to`, both positive
+ * @throws NoAnswerError where the gains are zero, so that there is no loop
+ */
+export function frequencyResponse({ loop, characteristic }: Pick<LoopFunctions, 'loop' | 'characteristic'>, options: FrequencyOptions = {}): FrequencyResponse {
+  if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to draw over frequency', 'gains')
+  const factored = cancelCommon(factor(loop), cancellationWidth).loop
+  const places = [...factored.zeros, ...factored.poles, ...roots(characteristic)]
+  const at = sampler(factored, options.deadTime ?? 0)
+  const usual = usualRange(places)
+  const range = {
+    from: options.from ?? Math.min(usual.from, (options.to ?? Infinity) / 10),
+    to: options.to ?? Math.max(usual.to, 10 * (options.from ?? 0)),
+  }
+  const frequency = sampleFrequencies(range, options.samples ?? usualSamples, places)
+  const samples = frequency.map(at)
+  return {
+    frequency,
+    magnitudeDb: samples.map(({ magnitude }) => decibels(magnitude)),
+    phaseDeg: samples.map(({ phase }) => toDegrees(phase)),
+    sensitivityDb: samples.map(({ sensitivity }) => decibels(sensitivity)),
+    complementaryDb: samples.map(({ complementary }) => decibels(complementary)),
+    sensitivityPeakFrequency: peakFrequency(w => at(w).sensitivity, sampleFrequencies(usual, usualSamples, places)),
+  }
+}
+
+function sampler(loop: FactoredLoop, deadTime: number): (w: number) => Sample {
+  const start = startAngle(loop)
+  return (w) => {
+    let magnitude = Math.log(Math.abs(loop.gain))
+    let phase = start - w * deadTime
+    for (const { re, im } of loop.zeros) {
+      magnitude += Math.log(Math.hypot(re, w - im))
+      phase += angleGained(re, im, w)
+    }
+    for (const { re, im } of loop.poles) {
+      magnitude -= Math.log(Math.hypot(re, w - im))
+      phase -= angleGained(re, im, w)
+    }
+    return { magnitude, phase, ...closed(magnitude, phase) }
+  }
+}
+
+/** arg L as w falls to 0: a quarter turn for each root at the origin, half a turn back where the rest is negative there. */
+function startAngle({ numerator, denominator }: FactoredLoop): number {
+  const [zeros, poles] = [polynomial.rootsAtOrigin(numerator), polynomial.rootsAtOrigin(denominator)]
+  const isNegative = polynomial.coefficientOf(numerator, zeros) < 0 !== polynomial.coefficientOf(denominator, poles) < 0
+  return (zeros - poles) * Math.PI / 2 - (isNegative ? Math.PI : 0)
+}
+
+/** By how much the factor jw - root has turned since w = 0, for a root beside its conjugate: the constant parts of the two cancel. */
+function angleGained(re: number, im: number, w: number): number {
+  if (re === 0 && im === 0) return 0
+  const size = Math.hypot(re, im)
+  const side = re > onAxis * size ? -1 : 1
+  return side * Math.atan2(w - im, Math.abs(re) <= onAxis * size ? 0 : Math.abs(re))
+}
+
+/** ln |S| and ln |T|, through the smaller one of L and 1/L. */
+function closed(magnitude: number, phase: number): Pick<Sample, 'sensitivity' | 'complementary'> {
+  const size = Math.exp(-Math.abs(magnitude))
+  const distance = Math.log(Math.hypot(1 + size * Math.cos(phase), size * Math.sin(phase)))
+  return magnitude > 0
+    ? { sensitivity: -magnitude - distance, complementary: -distance }
+    : { sensitivity: -distance, complementary: magnitude - distance }
+}
+
+/** The frequency of the largest |S|; null where that is at 0, at infinity, or infinite. */
+function peakFrequency(sensitivity: (w: number) => number, frequencies: readonly number[]): number | null {
+  const sizes = frequencies.map(sensitivity)
+  const best = sizes.reduce((most, size, i) => size > sizes[most]! ? i : most, 0)
+  if (best === 0 || best === sizes.length - 1) return null
+  const found = Math.exp(findMaximum(x => sensitivity(Math.exp(x)), Math.log(frequencies[best - 1]!), Math.log(frequencies[best + 1]!)))
+  // On a root of the axis the sample itself is higher than any place near it.
+  const size = Math.max(sensitivity(found), sizes[best]!)
+  const atEnds = Math.max(sensitivity(frequencies[0]! / farAway), sensitivity(frequencies.at(-1)! * farAway))
+  return size > atEnds && size < boundless ? found : null
+}
+
+function decibels(logarithm: number): number {
+  return Math.min(mostDb, Math.max(-mostDb, logarithm * 20 / Math.LN10))
+}

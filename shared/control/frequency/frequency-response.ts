@@ -45,7 +45,7 @@ interface Sample { magnitude: number, phase: number, sensitivity: number, comple
  */
 export function frequencyResponse({ loop, characteristic }: Pick<LoopFunctions, 'loop' | 'characteristic'>, options: FrequencyOptions = {}): FrequencyResponse {
   if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to draw over frequency', 'gains')
-  const factored = cancelCommon(factor(loop), cancellationWidth).loop
+  const factored = cancelCommon(factor({ ...loop, deadTime: options.deadTime ?? 0 }), cancellationWidth).loop
   const places = [...factored.zeros, ...factored.poles, ...roots(characteristic)]
   const at = sampler(factored, options.deadTime ?? 0)
   const usual = usualRange(places)

@@ -1,5 +1,5 @@
 import type { DesignSolution, Gains, LoopAnalysis } from '#shared/control/types'
-import type { AnalyzeBody, SolveBody } from '#shared/schemas/design'
+import type { AnalyzeBody, SolveAnswer, SolveBody } from '#shared/schemas/design'
 import type { ErrorBody, Issue } from '#shared/schemas/errors'
 import { askServer } from '~/utils/ask-server'
 import { newestWaits, RefusedError, type AskingState } from '~/utils/newest-waits'
@@ -18,7 +18,7 @@ export interface Refusal {
 
 /** The server's newest answers about the loop on the bench. Nothing of this is saved or shared. */
 export const useSolutionStore = defineStore('solution', () => {
-  const solution = shallowRef<DesignSolution | null>(null)
+  const solution = shallowRef<SolveAnswer | null>(null)
   const analysis = shallowRef<LoopAnalysis | null>(null)
   const solveState = ref<AskingState>('idle')
   const solveRefusal = shallowRef<Refusal | null>(null)
@@ -29,7 +29,7 @@ export const useSolutionStore = defineStore('solution', () => {
   let solveShown = 0
   let analyzeShown = 0
 
-  const solving = newestWaits<SolveQuestion, DesignSolution>({
+  const solving = newestWaits<SolveQuestion, SolveAnswer>({
     ask: (question, signal) => askServer('/api/design/solve', question, signal),
     onAnswer: (answer, _question, sequence) => receiveSolution(answer, sequence),
     onRefusal: (refusal, _question, sequence) => refuseSolution(refusal, sequence),
@@ -52,7 +52,7 @@ export const useSolutionStore = defineStore('solution', () => {
   const stale = computed(() => solution.value !== null
     && (status.value === 'waiting' || status.value === 'failed' || Object.keys(fieldIssues.value).length > 0))
 
-  function receiveSolution(answer: DesignSolution, sequence: number) {
+  function receiveSolution(answer: SolveAnswer, sequence: number) {
     if (sequence <= solveShown) return
     solveShown = sequence
     solution.value = markRaw(answer)

@@ -45,7 +45,7 @@ function thirdCondition({ integralToDerivativeRatio, thirdPole }: Extract<Contro
 function resolvePlant(plant: Plant, path: string, noun = 'plant'): TransferFunction {
   switch (plant.form) {
     case 'expression': {
-      const { numerator, denominator } = parseFormula(plant.expression, plant.parameters, `${path}.expression`)
+      const { numerator, denominator } = parseFormula(plant, path)
       return properRatio(numerator, denominator, path, { numerator: `${path}.expression`, denominator: `${path}.expression`, noun })
     }
     case 'coefficients':

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import type { DesignSolution } from '../control/types'
 import { complexSchema, finiteNumber } from './complex'
 import { limits } from './limits'
 import { controllerSchema, loopSchema } from './loop'
@@ -83,3 +84,9 @@ export type RequirementInput = z.infer<typeof requirementSchema>
 export type AnalyzeBody = z.infer<typeof analyzeBodySchema>
 export type SolveBody = z.infer<typeof solveBodySchema>
 export type FrequencyBody = z.infer<typeof frequencyBodySchema>
+
+/** The unit of each gain in SI units, such as `A` or `V s/m`; empty: a plain number; null: the plant does not tell. Zero and pole are in rad/s. */
+export type GainUnits = Readonly<Record<string, string | null>>
+
+/** What POST /api/design/solve answers. */
+export type SolveAnswer = DesignSolution & { gainUnits: GainUnits }

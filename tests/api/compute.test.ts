@@ -2,6 +2,7 @@ import { readFileSync } from 'node:fs'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { DesignSolution, FrequencyResponse, LoopAnalysis } from '#shared/control/types'
 import type { GainWindow } from '#shared/control/types'
+import type { SolveAnswer } from '#shared/schemas/design'
 import type { ErrorBody } from '#shared/schemas/errors'
 import { Client } from '../helpers/client'
 import { startServer, type RunningServer } from '../helpers/server'
@@ -28,7 +29,7 @@ describe('POST /api/design/solve', () => {
     expect(answer.body.gains).toEqual({ k: expect.closeTo(28 / 27, 10) })
     expect(answer.body.onLocus).toBe(true)
     expect(Object.keys(answer.body).sort()).toEqual([
-      'alternatives', 'closedLoopPoles', 'closedLoopZeros', 'designPoint', 'dominance', 'estimate', 'gains', 'leftoverAngleDeg', 'onLocus',
+      'alternatives', 'closedLoopPoles', 'closedLoopZeros', 'designPoint', 'dominance', 'estimate', 'gainUnits', 'gains', 'leftoverAngleDeg', 'onLocus',
       'readings', 'response', 'stable', 'unmet', 'verdicts',
     ])
     expect(Object.keys(answer.body.readings).sort()).toEqual([
@@ -52,6 +53,16 @@ describe('POST /api/design/solve', () => {
     const plant = { form: 'expression', expression: 'k0/(s·(s+1)·(s+p))', parameters: { k0: { value: 1, unit: 'rad/s' }, p: { value: 2, tolerancePercent: 10 } } }
     const answer = await client.post<DesignSolution>('/api/design/solve', { ...good, loop: { plant } })
     expect(answer.body.gains).toEqual({ k: expect.closeTo(28 / 27, 10) })
+  })
+
+  it('means each parameter in its unit, and answers with the units of the gains', async () => {
+    const plant = (tau: object) => ({ form: 'expression', expression: 'kv/(s*(tau*s + 1))', parameters: { kv: { value: 4, unit: 'rad/(s V)' }, tau } })
+    const ask = (tau: object) => client.post<SolveAnswer>('/api/design/solve', { loop: { plant: plant(tau) }, controller: { form: 'pd' }, designPoint: { re: -20, im: 15 } })
+    const [inMilliseconds, inSeconds] = [await ask({ value: 20, unit: 'ms' }), await ask({ value: 0.02 })]
+    expect(inMilliseconds.status).toBe(200)
+    expect(inMilliseconds.body.gains).toEqual(inSeconds.body.gains)
+    expect(inMilliseconds.body.gainUnits).toEqual({ kp: 'V', kd: 'V s' })
+    expect(inSeconds.body.gainUnits).toEqual({ kp: null, kd: null })
   })
 
   it('agrees over HTTP with the values in 50-digit arithmetic', async () => {
@@ -188,6 +199,26 @@ describe('bad input', () => {
   it('points at the character of a formula', async () => {
     const answer = await client.post<ErrorBody>('/api/design/solve', formula('1/(s*q)'))
     expect(answer.body.data?.issues).toEqual([{ path: 'loop.plant.expression', message: 'q is not among the parameters', position: 5 }])
+  })
+
+  it('points at unlike terms, in the plant and in the sensor', async () => {
+    const plant = { form: 'expression', expression: 'kt/(J*s^2+b)', parameters: { kt: { value: 1, unit: 'Nm/A' }, J: { value: 2, unit: 'kg m^2' }, b: { value: 1, unit: 'N m s' } } }
+    for (const [where, wrong] of [['loop.plant', { plant }], ['loop.sensor', { plant: loop.plant, sensor: plant }]] as const) {
+      const answer = await client.post<ErrorBody>('/api/design/solve', { ...good, loop: wrong })
+      expect(answer.status).toBe(400)
+      expect(answer.body.data?.issues).toEqual([
+        { path: `${where}.expression`, message: 'J*s^2 is in N m, b in N m s: unlike terms cannot be added', position: 10 },
+      ])
+    }
+  })
+
+  it.each(['__proto__', 'constructor', '1e999 m', 'm^1e9', '('.repeat(32), 'degC', '{{7*7}}', 'Ym^9 Ym^9 Ym^9', '\\u0000', '%00', '💥'.repeat(8)])('the unit %j is refused at its field', async (unit) => {
+    const plant = { form: 'expression', expression: 'k/(s*(s+1))', parameters: { k: { value: 1, unit } } }
+    const toAnalyze = { loop: { plant }, controller: { form: 'gain' } }
+    for (const [path, body] of [['design/solve', { ...good, ...toAnalyze }], ['design/gain-window', { ...good, ...toAnalyze }], ['loop/analyze', toAnalyze]] as const) {
+      const answer = await client.post<ErrorBody>(`/api/${path}`, body)
+      expect([answer.status, answer.body.data?.issues?.map(issue => issue.path)]).toEqual([400, ['loop.plant.parameters.k.unit']])
+    }
   })
 
   it.each(['', '{', '{"loop": NaN}', '[1e999]', 'null', '"text"', '{"__proto__": {"loop": 1}}'])('the text %j is refused', async (text) => {

@@ -2,7 +2,6 @@ import { describe, expect, it } from 'vitest'
 import type { ShareLink } from '#shared/schemas/link'
 import type { Scenario } from '#shared/schemas/scenario'
 import { slewDocument } from '../fixtures/document'
-import { BenchPage } from '../helpers/bench-page'
 import { newAccount, register } from '../helpers/people-pages'
 import { stage } from '../helpers/stage'
 
@@ -25,7 +24,7 @@ const texts = [
 
 describe.each(texts)('a person who writes %s', (text) => {
   it('is shown it as text, wherever it comes to stand', async () => {
-    const { page, leave } = await visit()
+    const { page, leave, expectFailure } = await visit()
     await register(page, { ...newAccount('Runa Holt'), name: text.slice(0, 60) })
     const post = async <Answer>(path: string, data: object) => (await page.request.post(path, { data, headers: { origin: origin() } })).json() as Promise<Answer>
     const short = text.slice(0, 80)
@@ -43,9 +42,11 @@ describe.each(texts)('a person who writes %s', (text) => {
     await post(`/api/shared/${link.token}/comments`, { body: text, name: short })
 
     const guest = await visit()
+    // No such text is a unit: the server refuses it, and says so at the parameter.
+    for (const expectRefusal of [expectFailure, guest.expectFailure]) expectRefusal(400, /\/api\/(design|loop)\//)
     for (const [someone, path] of [[page, '/scenarios'], [page, `/scenarios/${scenario.id}`], [guest.page, `/s/${link.token}`]] as const) {
       await someone.goto(path)
-      if (path !== '/scenarios') await new BenchPage(someone).ready()
+      if (path !== '/scenarios') await someone.locator('.parameter').getByRole('alert').waitFor()
       expect(new URL(someone.url()).pathname).toBe(path)
       expect(await someone.evaluate(() => (window as { ran?: number }).ran)).toBeUndefined()
       expect(await someone.locator('img[src="x"], svg[onload], meta[http-equiv="refresh"]').count()).toBe(0)

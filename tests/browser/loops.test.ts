@@ -94,3 +94,47 @@ describe('the room for the gain', () => {
     await expect.poll(sentence, { timeout: 10_000 }).toMatch(/No gain meets every requirement|Not here/)
   })
 })
+
+describe('units', () => {
+  const unitOf = (gain: string) => bench.says(`${gain}-unit`)
+
+  it('stand beside the gains, and go where they are not known', async () => {
+    expect(await unitOf('gain')).toBe('A')
+    await bench.typeGain(20)
+    await bench.awaitFigure('gain', value => expect(value).toBeCloseTo(20, 6))
+    await bench.chooseController('pid')
+    await expect.poll(() => unitOf('gain-kd')).toBe('A s')
+    expect([await unitOf('gain'), await unitOf('gain-ki')]).toEqual(['A', 'A/s'])
+    await bench.type('unit-J', '')
+    await bench.type('unit-b', '')
+    await expect.poll(() => someone.page.locator('[data-test$="-unit"]').count()).toBe(0)
+  })
+
+  it('are meant: a time constant in milliseconds makes another loop', async () => {
+    const [gain, margin] = [await bench.gain(), await bench.reading('phase-margin')]
+    // 0.09 ms in place of 0.09 s: the lag is all but gone.
+    await bench.type('unit-T', 'ms')
+    await bench.awaitFigure('phase-margin', value => expect(value).toBeGreaterThan(margin + 2))
+    await bench.type('parameter-T', 90)
+    await bench.awaitFigure('phase-margin', value => expect(value).toBeCloseTo(margin, 9))
+    expect(await bench.gain()).toBeCloseTo(gain, 9)
+  })
+
+  it('mark unlike terms at their character, and an unknown unit at its parameter', async () => {
+    someone.expectFailure(400, /\/api\/(design|loop)\//)
+    await bench.type('unit-b', 'N m')
+    const issue = someone.page.locator('[data-test="formula-issue"]')
+    await issue.waitFor()
+    expect(await issue.innerText()).toContain('J*s is in N m s, b in N m: unlike terms cannot be added')
+    expect(await issue.locator('mark').innerText()).toBe('b')
+
+    await bench.type('unit-b', 'N m seconds of arc')
+    const row = someone.page.locator('.parameter', { has: someone.page.locator('[data-test="unit-b"]') })
+    await row.getByRole('alert').waitFor()
+    expect(await row.getByRole('alert').innerText()).toContain('the unit of is not known')
+    expect(await someone.page.locator('[data-test="unit-b"]').getAttribute('aria-invalid')).toBe('true')
+    await bench.type('unit-b', 'Nms/rad')
+    await row.getByRole('alert').waitFor({ state: 'detached' })
+    expect(await unitOf('gain')).toBe('A')
+  })
+})

@@ -1,10 +1,13 @@
 import type { Gains } from '#shared/control/types'
+import type { GainUnits } from '#shared/schemas/design'
 
 export interface NamedGain {
   name: string
   value: number
   /** What it multiplies, in words. */
   meaning: string
+  /** Empty where it has none or none is known. */
+  unit: string
 }
 
 const meanings: Record<string, string> = {
@@ -18,8 +21,8 @@ const meanings: Record<string, string> = {
 }
 
 /** The gains in the order in which they are read. */
-export function namedGains(gains: Gains): NamedGain[] {
-  return Object.entries(gains).map(([name, value]) => ({ name, value: value as number, meaning: meanings[name]! }))
+export function namedGains(gains: Gains, units: GainUnits = {}): NamedGain[] {
+  return Object.entries(gains).map(([name, value]) => ({ name, value: value as number, meaning: meanings[name]!, unit: units[name] ?? '' }))
 }
 
 /** What a negative gain asks for, in words; null where none is negative. Zero and pole of a lead or lag are places, not gains. */

@@ -1,7 +1,8 @@
 import { solveDesign } from '#shared/control/solve'
-import { solveBodySchema } from '#shared/schemas/design'
+import { type SolveAnswer, solveBodySchema } from '#shared/schemas/design'
 import { readValidated } from '../../utils/body'
 import { designTarget } from '../../utils/design-target'
+import { gainUnits } from '../../utils/gain-units'
 import { compute, limitCompute } from '../../utils/limits'
 import { resolveController, resolveLoop } from '../../utils/loop-model'
 
@@ -9,5 +10,8 @@ export default defineEventHandler(async (event) => {
   await limitCompute(event)
   const body = await readValidated(event, solveBodySchema)
   const { requirements, response } = body
-  return compute(event, () => solveDesign(resolveLoop(body.loop), resolveController(body.controller), designTarget(body), { requirements, response }))
+  return compute(event, (): SolveAnswer => ({
+    ...solveDesign(resolveLoop(body.loop), resolveController(body.controller), designTarget(body), { requirements, response }),
+    gainUnits: gainUnits(body.loop, body.controller),
+  }))
 })

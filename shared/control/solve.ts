@@ -5,12 +5,15 @@ import { toDegrees } from './angle'
 import { loopFunctions } from './controller'
 import { InvalidInputError, NoAnswerError } from './errors'
 import { describePoint } from './design-point'
+import { stepShape } from './deviation-cause'
+import { dominance } from './dominance'
 import { dominantPole } from './dominant-pole'
 import { estimateAt } from './estimate'
 import { placeGains, type Placement } from './placement'
 import { readAll } from './readings'
 import { respondTo, sampleResponse } from './response/response'
 import { diesOut } from './stability'
+import { steadyState } from './steady-state-figures'
 import type { Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
 import { judge } from './verdicts'
 
@@ -57,6 +60,8 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
   const step = respondTo('reference-step', functions, poles)
   const readings = readAll(functions, poles, stable, step, { amplitude, settlingBandPercent })
   const designPoint = asked ?? dominantPole(poles, functions.reference) ?? zero
+  const estimate = estimateAt(designPoint)
+  const zeros = isZero(functions.reference.numerator) ? [] : roots(functions.reference.numerator)
   const verdicts = judge(options.requirements ?? [], readings, poles, stable)
   return {
     gains: placement.gains,
@@ -65,12 +70,13 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
     leftoverAngleDeg: toDegrees(placement.leftoverAngle),
     onLocus: placement.onLocus,
     closedLoopPoles: poles,
-    closedLoopZeros: isZero(functions.reference.numerator) ? [] : roots(functions.reference.numerator),
+    closedLoopZeros: zeros,
     stable,
     response: sampleResponse(input === 'reference-step' ? step : respondTo(input, functions, poles), poles, response),
     readings,
-    estimate: estimateAt(designPoint),
-    dominance: null,
+    estimate,
+    dominance: dominance({ poles, zeros, stable, shape: stepShape(readings, step.output, settlingBandPercent) }, designPoint, estimate, placement.onLocus),
+    steadyState: steadyState(functions, stable, amplitude),
     verdicts,
     unmet: verdicts.filter(verdict => !verdict.met).length,
   }

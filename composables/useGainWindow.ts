@@ -1,5 +1,6 @@
 import type { GainWindow, Gains } from '#shared/control/types'
 import { askServer } from '~/utils/ask-server'
+import { areGainsOf } from '~/utils/bench/controller-forms'
 
 /** The room about some gains, with the gains that its factors multiply. */
 export interface RoomAbout {
@@ -23,7 +24,8 @@ export function useGainWindow() {
   async function ask() {
     const { loop, controller, requirements } = bench.document
     const gains = store.solution?.gains
-    if (!gains || store.stale || requirements.length === 0) return void (room.value = null)
+    // An answer may lag behind a change of the form: its gains then belong to the form before.
+    if (!gains || store.stale || requirements.length === 0 || !areGainsOf(controller.form, gains)) return void (room.value = null)
     const number = ++asked
     try {
       const window = await askServer<GainWindow>('/api/design/gain-window', { loop, controller, gains, requirements })

@@ -28,7 +28,7 @@ describe('the sentence on dominance', () => {
     await bench.chooseController('pd')
     // kd = 1, kp = 4: the zero lies at -4; by the formula of the response with a zero the overshoot is 19.1 % in place of 16.3 %.
     await expect.poll(() => bench.says('dominance-sentence')).toMatch(/^The zero at -4 adds 2\.8 points of overshoot to the second-order estimate\.$/)
-    expect(await bench.says('difference-overshoot')).toMatch(/^2\.8 points low$/)
+    expect(await bench.says('difference-overshoot')).toMatch(/^2\.8 pt low$/)
   })
 })
 

@@ -19,8 +19,8 @@ import type { Readings } from '#shared/control/types'
 describe('sentences of the bench', () => {
   it('says how far an estimate is off, where that is worth saying', () => {
     const [overshoot, settling] = [{ unit: '%' }, { unit: 's' }]
-    expect(estimateDifference(overshoot, 16.3, 10)).toBe('6.3 points low')
-    expect(estimateDifference(overshoot, 0, 10)).toBe('10.0 points high')
+    expect(estimateDifference(overshoot, 16.3, 10)).toBe('6.3\u00A0pt low')
+    expect(estimateDifference(overshoot, 0, 10)).toBe('10.0\u00A0pt high')
     expect(estimateDifference(overshoot, 10.9, 10)).toBeNull()
     expect(estimateDifference(settling, 5, 4)).toBe('20\u00A0% short')
     expect(estimateDifference(settling, 1, 4)).toBe('300\u00A0% long')

@@ -8,8 +8,8 @@ const resolve = { alias: { '#shared': `${root}shared`, '~': root.replace(/\/$/, 
 export default defineConfig({
   test: {
     projects: [
-      { resolve, test: { name: 'unit', include: ['tests/unit/**/*.test.ts'] } },
-      { resolve, test: { name: 'reference', include: ['tests/reference/**/*.test.ts'] } },
+      { resolve, test: { name: 'unit', include: ['tests/unit/**/*.test.ts'], testTimeout: 30_000 } },
+      { resolve, test: { name: 'reference', include: ['tests/reference/**/*.test.ts'], testTimeout: 30_000 } },
       { resolve, test: { name: 'api', include: ['tests/api/**/*.test.ts'], testTimeout: 30_000, hookTimeout: 60_000 } },
       {
         resolve,

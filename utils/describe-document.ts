@@ -69,16 +69,20 @@ function describeController(controller: ScenarioDocument['controller']): string 
   const { label } = controllerForms[controller.form]
   switch (controller.form) {
     case 'gain': return controller.shape ? `${label}, shape ${describeRatio(controller.shape)}` : label
-    case 'lead': return `${label}, pole-zero ratio ${figure(controller.poleZeroRatio)}`
+    case 'lead': return `${label}, pole-zero ratio ${figure(controller.poleZeroRatio)}${alternativeWords(controller)}`
     case 'lag': return `${label}, pole-zero ratio ${figure(controller.poleZeroRatio)}, zero ${figure(controller.zero)}`
     case 'pd': return label + filterWords(controller)
-    case 'pid': return `${label}, ${controller.thirdPole === undefined ? `Ti/Td ${figure(controller.integralToDerivativeRatio ?? NaN)}` : `third root ${figure(controller.thirdPole)} rad/s`}${filterWords(controller)}`
+    case 'pid': return `${label}, ${controller.thirdPole === undefined ? `Ti/Td ${figure(controller.integralToDerivativeRatio ?? NaN)}` : `third root ${figure(controller.thirdPole)} rad/s`}${filterWords(controller)}${alternativeWords(controller)}`
     default: return label
   }
 }
 
 function filterWords({ derivativeFilter }: { derivativeFilter?: number }): string {
   return derivativeFilter === undefined ? '' : `, derivative filter ${figure(derivativeFilter)} s`
+}
+
+function alternativeWords({ alternative = 0 }: { alternative?: number }): string {
+  return alternative === 0 ? '' : `, gains ${alternative + 1} of those that reach the point`
 }
 
 function describeRequirements(requirements: ScenarioDocument['requirements']): string {

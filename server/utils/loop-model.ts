@@ -27,7 +27,10 @@ export function resolveLoop(loop: Loop, path = 'loop'): LoopModel {
 
 /** The controller, when its form is available. */
 export function resolveController(controller: ControllerForm, path = 'controller'): Controller {
-  if (controller.form === 'pid') return { form: 'pid', derivativeFilter: controller.derivativeFilter, third: thirdCondition(controller, path) }
+  if (controller.form === 'pid') {
+    const { derivativeFilter, alternative } = controller
+    return { form: 'pid', derivativeFilter, third: thirdCondition(controller, path), alternative }
+  }
   if (controller.form === 'gain' && controller.shape !== undefined) {
     const shape = properRatio(controller.shape.numerator, controller.shape.denominator, `${path}.shape`, { improperAllowed: true })
     return { form: 'gain', shape }

@@ -3,6 +3,9 @@ import { findRoot } from '../numerics/find-root'
 import { describePoint, overshootFromDamping } from './design-point'
 import type { DesignSolution } from './types'
 
+/** An estimate further than this from the true figure, in points of overshoot or percent of a time, is said to be. */
+export const worthSaying = { points: 1, percent: 5 }
+
 /**
  * The second-order rules of thumb at a design point, as if its pair were the whole loop:
  * overshoot 100 exp(-pi zeta/sqrt(1 - zeta^2)) percent, peak time pi/wd, settling time 4/(zeta wn) (2 %), and the 10 to 90 % rise time of

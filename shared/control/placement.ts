@@ -11,7 +11,7 @@ import { valuesAt } from './values-at'
 /** Gains for a design point. */
 export interface Placement {
   gains: Gains
-  /** Other admissible gains that reach the same point. */
+  /** Other admissible gains that reach the same point, in the order that the form fixes. */
   alternatives: Gains[]
   /** Radians in (-pi, pi]: what the angle condition lacks; 0 for forms that reach the point. */
   leftoverAngle: number
@@ -44,16 +44,18 @@ function place(model: LoopModel, controller: Controller, designPoint: Complex): 
   switch (controller.form) {
     case 'gain': return placeOneGain(openLoop(model, controller), designPoint, k => ({ k }))
     case 'lag': return placeOneGain(openLoop(model, controller), designPoint, k => ({ k, ...lagPlaces(controller) }))
-    case 'lead': return reached(placeLead(measuredPlant(model), controller.poleZeroRatio, designPoint))
+    case 'lead': return reached(placeLead(measuredPlant(model), controller.poleZeroRatio, designPoint), controller.alternative)
     case 'pi': return reached([placeProportionalIntegral(measuredPlant(model), designPoint)])
     case 'pd': return reached([placeProportionalDerivative(measuredPlant(model), controller.derivativeFilter ?? 0, designPoint)])
-    case 'pid': return reached(placeThreeTerms(measuredPlant(model), controller.derivativeFilter ?? 0, controller.third, designPoint))
+    case 'pid': return reached(placeThreeTerms(measuredPlant(model), controller.derivativeFilter ?? 0, controller.third, designPoint), controller.alternative)
     case 'rate': return reached([placeRateFeedback({ ...effectivePlant(model), deadTime: model.deadTime ?? 0 }, model.sensor ?? { numerator: [1], denominator: [1] }, designPoint)])
   }
 }
 
-function reached([gains, ...alternatives]: Gains[]): Placement {
-  return { gains: gains!, alternatives, leftoverAngle: 0, onLocus: true }
+/** The wanted one of the solutions, or the first where there are fewer; the others keep their order. */
+function reached(solutions: Gains[], wanted = 0): Placement {
+  const chosen = wanted < solutions.length ? wanted : 0
+  return { gains: solutions[chosen]!, alternatives: solutions.filter((_, i) => i !== chosen), leftoverAngle: 0, onLocus: true }
 }
 
 /** K = 1/|L0(s)|; leftover angle arg L0(s) - pi. An open-loop pole is reached with no gain at all. */

@@ -5,11 +5,14 @@ import { toDegrees } from './angle'
 import { closeLoop } from './closed-loop'
 import { InvalidInputError, NoAnswerError } from './errors'
 import { describePoint } from './design-point'
+import { stepShape } from './deviation-cause'
+import { dominanceOfParts } from './dominance-of-parts'
 import { dominantPole } from './dominant-pole'
 import { estimateAt } from './estimate'
 import { placeGains, type Placement } from './placement'
 import { readAll } from './readings'
 import { sampleResponse } from './response/response'
+import { steadyState } from './steady-state-figures'
 import type { ContinuousDesign, Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
 import { judge } from './verdicts'
 
@@ -55,6 +58,8 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
   const step = closed.respondTo('reference-step', amplitude)
   const readings = readAll(closed, step, { amplitude, settlingBandPercent })
   const designPoint = asked ?? dominantPole(poles, functions) ?? zero
+  const estimate = estimateAt(designPoint)
+  const zeros = isZero(functions.reference.numerator) ? [] : roots(functions.reference.numerator)
   const verdicts = judge(options.requirements ?? [], readings, poles, stable)
   const shown = sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), poles, response)
   return {
@@ -64,12 +69,15 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
     leftoverAngleDeg: toDegrees(placement.leftoverAngle),
     onLocus: placement.onLocus,
     closedLoopPoles: poles,
-    closedLoopZeros: isZero(functions.reference.numerator) ? [] : roots(functions.reference.numerator),
+    closedLoopZeros: zeros,
     stable,
     response: shown,
     readings,
-    estimate: estimateAt(designPoint),
-    dominance: null,
+    estimate,
+    dominance: dominanceOfParts(model, controller, placement.gains, closed, {
+      designPoint, estimate, onLocus: placement.onLocus, amplitude, shape: stepShape(readings, step.output, settlingBandPercent),
+    }),
+    steadyState: steadyState(closed, amplitude),
     verdicts,
     unmet: verdicts.filter(verdict => !verdict.met).length,
     ...(model.sampling === undefined ? {} : { continuous: withoutSampling(model, controller, placement.gains, { ...response, duration: shown.time[shown.time.length - 1]! }) }),

@@ -35,15 +35,18 @@ export interface Sampling {
   computingDelay: boolean
 }
 
-/** The controller forms; the meaning of each field is fixed by docs/http-contract.md. */
+/**
+ * The controller forms; the meaning of each field is fixed by docs/http-contract.md. `alternative` tells which of several gains that reach the
+ * point are wanted, 0 the first.
+ */
 export type Controller =
   | { form: 'gain', shape?: TransferFunction }
   | { form: 'pd', derivativeFilter?: number }
   | { form: 'pi' }
   | { form: 'rate' }
-  | { form: 'lead', poleZeroRatio: number }
+  | { form: 'lead', poleZeroRatio: number, alternative?: number }
   | { form: 'lag', poleZeroRatio: number, zero: number }
-  | { form: 'pid', derivativeFilter?: number, third: ThirdCondition }
+  | { form: 'pid', derivativeFilter?: number, third: ThirdCondition, alternative?: number }
 
 /** What settles the third gain of a PID: the ratio of integral to derivative time, or the place (rad/s) of a real closed-loop root. */
 export type ThirdCondition = { integralToDerivativeRatio: number } | { pole: number }
@@ -169,6 +172,29 @@ export interface SampledSignals {
   limitedUntil?: number | null
 }
 
+/** How far the pair nearest the design point speaks for the whole loop; the definitions are those of docs/method.md. */
+export interface Dominance {
+  sentence: string
+  /** Weight of the pair over that of all roots in the step response, 0..1; null where the response does not come to rest. */
+  residueShare: number | null
+  /** Real part of the slowest other root over that of the pair; null where there is none. */
+  nextPoleRatio: number | null
+  /** rad/s from the pair to the nearest closed-loop zero; null where there is none. */
+  nearestZeroDistance: number | null
+}
+
+/** Type and error constants of the unity-feedback loop with the same error r - y; a constant is null where it is infinite. */
+export interface SteadyState {
+  /** Free integrators; null where the error is 0 at all times. */
+  type: number | null
+  /** Kp, Kv in 1/s, Ka in 1/s^2. */
+  positionConstant: number | null
+  velocityConstant: number | null
+  accelerationConstant: number | null
+  /** What r - y tends to after a parabola amplitude t^2/2, signed; null where it grows or the loop is unstable. */
+  errorParabola: number | null
+}
+
 export interface DesignSolution {
   gains: Gains
   alternatives: Gains[]
@@ -182,8 +208,9 @@ export interface DesignSolution {
   readings: Readings
   /** The second-order rules of thumb at the design point. */
   estimate: { overshootPercent: number | null, peakTime: number | null, settlingTime: number | null, riseTime: number | null }
-  /** Not available yet: null. */
-  dominance: null
+  /** null where the loop has no root. */
+  dominance: Dominance | null
+  steadyState: SteadyState
   verdicts: Verdict[]
   unmet: number
   /** Present with a sampled controller: the same gains in the loop as it was designed, without sampling. */

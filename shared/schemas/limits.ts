@@ -8,6 +8,7 @@ export const limits = {
   parameterName: 32,
   parameterUnit: 32,
   requirements: 16,
+  alternative: 3,
   samples: { least: 20, most: 2000 },
   /** rad/s. */
   frequency: { least: 1e-12, most: 1e12 },

@@ -61,6 +61,9 @@ export const loopSchema = z.strictObject({
 /** Seconds; absent: an ideal derivative. */
 const derivativeFilter = z.number().positive('a filter time is greater than 0; leave it out for an ideal derivative').optional()
 
+/** Which of several gains that reach the design point are wanted; 0 or absent: the first. */
+const alternative = z.int().min(0).max(limits.alternative, `at most ${limits.alternative}: no form has more gains for one point`).optional()
+
 export const controllerSchema = z.discriminatedUnion('form', [
   z.strictObject({ form: z.literal('gain'), shape: transferFunctionSchema.optional() }),
   z.strictObject({ form: z.literal('pd'), derivativeFilter }),
@@ -71,8 +74,9 @@ export const controllerSchema = z.discriminatedUnion('form', [
     derivativeFilter,
     integralToDerivativeRatio: z.number().positive().optional(),
     thirdPole: z.number().lt(0, 'the third pole is negative').optional(),
+    alternative,
   }),
-  z.strictObject({ form: z.literal('lead'), poleZeroRatio: z.number().gt(1, 'the pole-zero ratio of a lead is greater than 1') }),
+  z.strictObject({ form: z.literal('lead'), poleZeroRatio: z.number().gt(1, 'the pole-zero ratio of a lead is greater than 1'), alternative }),
   z.strictObject({
     form: z.literal('lag'),
     poleZeroRatio: z.number().gt(0).lt(1, 'the pole-zero ratio of a lag lies between 0 and 1'),

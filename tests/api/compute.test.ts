@@ -30,8 +30,10 @@ describe('POST /api/design/solve', () => {
     expect(answer.body.onLocus).toBe(true)
     expect(Object.keys(answer.body).sort()).toEqual([
       'alternatives', 'closedLoopPoles', 'closedLoopZeros', 'designPoint', 'dominance', 'estimate', 'gainUnits', 'gains', 'leftoverAngleDeg', 'onLocus',
-      'readings', 'response', 'stable', 'unmet', 'verdicts',
+      'readings', 'response', 'stable', 'steadyState', 'unmet', 'verdicts',
     ])
+    expect(Object.keys(answer.body.dominance!).sort()).toEqual(['nearestZeroDistance', 'nextPoleRatio', 'residueShare', 'sentence'])
+    expect(Object.keys(answer.body.steadyState).sort()).toEqual(['accelerationConstant', 'errorParabola', 'positionConstant', 'type', 'velocityConstant'])
     expect(Object.keys(answer.body.readings).sort()).toEqual([
       'bandwidth', 'delayMargin', 'finalValue', 'gainCrossover', 'gainMargin', 'gainMarginDb', 'overshootPercent', 'peakEffort', 'peakTime',
       'phaseCrossover', 'phaseMarginDeg', 'riseTime', 'sensitivityPeak', 'settlingTime', 'steadyStateErrorRamp', 'steadyStateErrorStep',
@@ -47,6 +49,32 @@ describe('POST /api/design/solve', () => {
     expect(answer.status).toBe(200)
     expect(answer.body).toMatchObject({ stable: false, gains: { k: 12 }, readings: { overshootPercent: null, settlingTime: null } })
     expect(answer.body.readings.gainMarginDb).toBeCloseTo(-20 * Math.log10(2), 9)
+  })
+
+  // The third root of s³ + 3 s² + 2 s + 28/27 lies at -7/3, seven times as far left as the pair; Kv = (28/27)/2.
+  it('tells how far the pair speaks for the loop, type and error constants', async () => {
+    const { body } = await client.post<DesignSolution>('/api/design/solve', good)
+    expect(body.dominance).toMatchObject({ nextPoleRatio: expect.closeTo(7, 8), nearestZeroDistance: null })
+    expect(body.dominance!.residueShare).toBeGreaterThan(0.9)
+    expect(body.dominance!.sentence).toMatch(/^The .+\.$/)
+    expect(body.steadyState).toEqual({ type: 1, positionConstant: null, velocityConstant: expect.closeTo(14 / 27, 10), accelerationConstant: 0, errorParabola: null })
+  })
+
+  it('gives the one of several gains that is asked for, and refuses what no form has', async () => {
+    const double = { plant: { form: 'coefficients', numerator: [1], denominator: [1, 0, 0] } }
+    const solve = (alternative?: number) => client.post<DesignSolution & ErrorBody>('/api/design/solve', {
+      loop: double, controller: { form: 'pid', integralToDerivativeRatio: 4, alternative }, designPoint: { re: -1, im: 1 },
+    })
+    const [first, second, beyond] = [await solve(), await solve(1), await solve(3)]
+    expect(first.body.alternatives).toHaveLength(1)
+    expect(second.body).toMatchObject({ gains: first.body.alternatives[0], alternatives: [first.body.gains] })
+    expect(beyond.body.gains).toEqual(first.body.gains)
+    for (const alternative of [4, -1, 0.5]) {
+      const { status, body } = await solve(alternative)
+      expect([status, body.data?.issues?.map(issue => issue.path)]).toEqual([400, ['controller.alternative']])
+    }
+    const answer = await client.post<ErrorBody>('/api/design/solve', { ...good, controller: { form: 'pi', alternative: 1 } })
+    expect(answer.status).toBe(400)
   })
 
   it('takes the plant as a formula with named parameters', async () => {

@@ -54,6 +54,12 @@ describe.each([
     await page.keyboard.press('End')
     await page.locator('[data-test="frequency-reads"]').first().waitFor()
     await look('the bench with the loop over frequency')
+    for (const details of ['steady-state', 'locus-facts', 'cautions']) await page.locator(`[data-test="${details}"] > summary`).click()
+    await bench.typeCoefficients({ numerator: '1', denominator: '1 0 0' })
+    await bench.chooseController('pid')
+    await page.locator('[data-test="gain-choices"]').waitFor()
+    await look('the bench with everything unfolded and gains to choose from')
+    await bench.open('/')
     await bench.type('zeta', 'brisk')
     await look('the bench with an error beside a field')
     await page.goto('/sign-in')
@@ -114,7 +120,7 @@ describe('the bench with limits broken', () => {
     const tooWide: object[] = []
     for (const width of [390, 600, 720, 768, 959, 1024, 1120, 1280, 1440, 2560]) {
       await page.setViewportSize({ width, height: 900 })
-      const rooms = await page.evaluate(() => [document.documentElement, ...document.querySelectorAll('.zone-readings, .roots, .loop-sheet, header')]
+      const rooms = await page.evaluate(() => [document.documentElement, ...document.querySelectorAll('.zone-readings, .roots, .facts, .loop-sheet, header')]
         .filter(room => room.scrollWidth > room.clientWidth + 1).map(room => room.className || room.tagName))
       if (rooms.length > 0) tooWide.push({ width, rooms })
     }

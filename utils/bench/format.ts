@@ -39,6 +39,11 @@ export function toTyped(value: number): string {
   return String(Number(value.toPrecision(12)))
 }
 
+/** Text of the server, with its hyphens before figures made minus signs. */
+export function withTrueMinus(text: string): string {
+  return text.replace(/-(?=\d)/g, minus)
+}
+
 /** A place in the s-plane, such as -1.32 + 1.76j. */
 export function formatComplex({ re, im }: Complex, digits = 3): string {
   if (im === 0) return formatFigure(re, digits)

@@ -1,10 +1,13 @@
 import { describe, expect, it } from 'vitest'
 import { areGainsOf, controllerForms, offeredForms } from '~/utils/bench/controller-forms'
 import { demoScenario } from '~/utils/bench/demo-scenario'
-import { estimateSentence } from '~/utils/bench/estimate-sentence'
+import { estimateDifference } from '~/utils/bench/estimate-difference'
 import { sayField, sayIssue } from '~/utils/bench/field-words'
+import { withTrueMinus } from '~/utils/bench/format'
+import { gainChoices } from '~/utils/bench/gain-choices'
 import { negativeGainSentence } from '~/utils/bench/gain-words'
 import { formatLimit, readingDescriptions } from '~/utils/bench/readings'
+import { steadyStateRows } from '~/utils/bench/steady-state-rows'
 import { differences } from '~/utils/describe-document'
 import { readingNames } from '#shared/schemas/design'
 import { scenarioDocumentSchema } from '#shared/schemas/document'
@@ -13,19 +16,41 @@ import { controllerSchema } from '#shared/schemas/loop'
 import { resolveController } from '../../../server/utils/loop-model'
 import type { Readings } from '#shared/control/types'
 
-const design = (overshoot: number | null, settling: number | null, stable = true) => ({
-  stable,
-  readings: { overshootPercent: overshoot, settlingTime: settling } as Readings,
-  estimate: { overshootPercent: 10, settlingTime: 4, peakTime: 1, riseTime: 1 },
-})
-
 describe('sentences of the bench', () => {
-  it('says how far the rules of thumb are off', () => {
-    expect(estimateSentence(design(16.3, 4))).toBe('The overshoot is 6.3 points above the second-order estimate.')
-    expect(estimateSentence(design(10.5, 3))).toBe('The loop settles 25 % sooner than the rule of thumb.')
-    expect(estimateSentence(design(8, 12))).toBe('The overshoot is 2.0 points below the second-order estimate, and settling takes 3.0 times the rule of thumb.')
-    expect(estimateSentence(design(10.9, 4.1))).toMatch(/^The second-order estimate is close here/)
-    expect(estimateSentence(design(null, null, false))).toBeNull()
+  it('says how far an estimate is off, where that is worth saying', () => {
+    const [overshoot, settling] = [{ unit: '%' }, { unit: 's' }]
+    expect(estimateDifference(overshoot, 16.3, 10)).toBe('6.3\u00A0pt low')
+    expect(estimateDifference(overshoot, 0, 10)).toBe('10.0\u00A0pt high')
+    expect(estimateDifference(overshoot, 10.9, 10)).toBeNull()
+    expect(estimateDifference(settling, 5, 4)).toBe('20\u00A0% short')
+    expect(estimateDifference(settling, 1, 4)).toBe('300\u00A0% long')
+    expect(estimateDifference(settling, 4.1, 4)).toBeNull()
+    expect(estimateDifference(settling, 0, 4)).toBeNull()
+    expect(estimateDifference(settling, null, 4)).toBeNull()
+    expect(estimateDifference(settling, 4, null)).toBeNull()
+  })
+
+  it('sets hyphens before figures as minus signs, and no other', () => {
+    expect(withTrueMinus('The zero at -4.1 adds to the second-order estimate.')).toBe('The zero at \u22124.1 adds to the second-order estimate.')
+  })
+
+  it('lists the gains that reach a point in their own order, whichever is chosen', () => {
+    const [first, second] = [{ kp: 1, ki: 2, kd: 3 }, { kp: 4, ki: 5, kd: 6 }]
+    const words = ['kp 1.00, ki 2.00, kd 3.00', 'kp 4.00, ki 5.00, kd 6.00']
+    const told = (solution: { gains: object, alternatives: object[] }, wanted?: number) =>
+      gainChoices(solution as Parameters<typeof gainChoices>[0], wanted).map(({ words, chosen }) => [words, chosen])
+    expect(told({ gains: first, alternatives: [second] })).toEqual([[words[0], true], [words[1], false]])
+    expect(told({ gains: second, alternatives: [first] }, 1)).toEqual([[words[0], false], [words[1], true]])
+    // Asked for a third where there are two: the first is what was given.
+    expect(told({ gains: first, alternatives: [second] }, 2)).toEqual([[words[0], true], [words[1], false]])
+  })
+
+  it('tells the steady state, infinite constants and growing errors in words', () => {
+    const steadyState = { type: 1, positionConstant: null, velocityConstant: 2, accelerationConstant: 0, errorParabola: null }
+    const readings = { steadyStateErrorStep: 0, steadyStateErrorRamp: 0.5 } as Readings
+    const shown = (stable: boolean) => steadyStateRows({ steadyState, readings: stable ? readings : { ...readings, steadyStateErrorStep: null, steadyStateErrorRamp: null }, stable }).map(row => row.shown)
+    expect(shown(true)).toEqual(['1', 'infinite', '2.000\u00A01/s', '0', '0', '0.5000', 'grows'])
+    expect(shown(false)).toEqual(['1', 'infinite', '2.000\u00A01/s', '0', '–', '–', '–'])
   })
 
   it('tells negative gains in words, places of a lead left out', () => {
@@ -69,11 +94,11 @@ describe('two versions of a scenario', () => {
     const { title, machine, axis, document } = demoScenario
     const mine = { title, machine, axis, document }
     expect(differences(mine, mine)).toEqual([])
-    const other = { ...document, controller: { form: 'lead' as const, poleZeroRatio: 8 }, designPoint: { re: -1, im: 0.5 }, requirements: document.requirements.slice(0, 2) }
+    const other = { ...document, controller: { form: 'lead' as const, poleZeroRatio: 8, alternative: 1 }, designPoint: { re: -1, im: 0.5 }, requirements: document.requirements.slice(0, 2) }
     expect(differences(mine, { ...mine, machine: '', document: other })).toEqual([
       { what: 'Machine', mine: 'Quay crane 2', theirs: 'none' },
       { what: 'Design point', mine: '−0.5783 + 0.7711j (damping ratio 0.6, 0.9639 rad/s)', theirs: '−1.000 + 0.5000j (damping ratio 0.8944, 1.118 rad/s)' },
-      { what: 'Controller', mine: 'one gain, k', theirs: 'lead, pole-zero ratio 8' },
+      { what: 'Controller', mine: 'one gain, k', theirs: 'lead, pole-zero ratio 8, gains 2 of those that reach the point' },
       {
         what: 'Requirements',
         mine: 'overshoot at most 12\u00A0%; settling time at most 7\u00A0s; phase margin at least 55°; gain margin at least 12\u00A0dB; ramp error at most 1.5\u00A0s',

@@ -121,6 +121,18 @@ describe('lead', () => {
     expect(() => placeGains(model([1], [1, 1, 0]), controller, { re: -0.2, im: 0.1 })).toThrow(/phase lag/)
   })
 
+  it('gives the wanted one of its zeros, the others in their order, and the first where there are fewer', () => {
+    const plant = model([1], [1, 2, 0])
+    const point = { re: -2, im: 2 }
+    const place = (alternative?: number) => placeGains(plant, { form: 'lead', poleZeroRatio: 6, alternative }, point)
+    const { gains: first, alternatives: [second] } = place()
+    expect(second).toBeDefined()
+    expect((first as { k: number }).k).toBeGreaterThan((second as { k: number }).k)
+    expect(place(0)).toEqual(place())
+    expect(place(1)).toEqual({ gains: second, alternatives: [first], leftoverAngle: 0, onLocus: true })
+    expect(place(2)).toEqual(place())
+  })
+
   it('makes a real point a double root', () => {
     const plant = model([1], [1, 1, 0])
     const { gains } = placeGains(plant, { form: 'lead', poleZeroRatio: 8 }, { re: -2, im: 0 })

@@ -67,6 +67,16 @@ describe('a PID', () => {
     expect(keys).toEqual([...keys].sort((a, b) => b[0] - a[0] || b[1] - a[1]))
   })
 
+  it('comes as the one that is asked for, the others in their order', () => {
+    // 1/s² at -1 + j: kp = 2 + 2t, kd = 2 + t, ki = 2t, and (2 + 2t)² = 8 t (2 + t) has the roots t = -1 ± sqrt 2.
+    const double = loopOf([1], [1, 0, 0])
+    const place = (alternative?: number) => placeGains(double, { form: 'pid', third: { integralToDerivativeRatio: 4 }, alternative }, { re: -1, im: 1 })
+    const { gains: first, alternatives: [second, ...rest] } = place()
+    expect([second !== undefined, rest]).toEqual([true, []])
+    expect(place(1)).toEqual({ gains: second, alternatives: [first], leftoverAngle: 0, onLocus: true })
+    expect(place(3)).toEqual(place())
+  })
+
   it('makes a double root at a real point', () => {
     const model = loopOf([2], [1, 4, 3, 0])
     const { gains } = placeGains(model, controllerOf({ pole: -5 }, undefined), { re: -1.5, im: 0 })

@@ -9,6 +9,8 @@ export default defineConfig({
   test: {
     projects: [
       { resolve, test: { name: 'unit', include: ['tests/unit/**/*.test.ts'] } },
+      // Long enough for fast-check to shrink a counterexample.
+      { resolve, test: { name: 'properties', include: ['tests/properties/**/*.test.ts'], testTimeout: 120_000 } },
       { resolve, test: { name: 'reference', include: ['tests/reference/**/*.test.ts'] } },
       { resolve, test: { name: 'api', include: ['tests/api/**/*.test.ts'], testTimeout: 30_000, hookTimeout: 60_000 } },
       {

@@ -46,7 +46,8 @@ export function followRoot({ openLoop: { numerator, denominator } }: LoopAnalysi
 export function cutOff({ openLoop: { numerator, denominator } }: LoopAnalysis, a: BranchPoint, b: BranchPoint): number {
   const middle = { re: (a[0] + b[0]) / 2, im: (a[1] + b[1]) / 2 }
   const distanceAt = (share: number) => {
-    const gain = a[2] > 0 ? a[2] * (b[2] / a[2]) ** share : b[2] * share
+    // From a pole to beside a zero in one piece the gain runs over many decades.
+    const gain = a[2] > 0 ? a[2] * (b[2] / a[2]) ** share : b[2] * share ** 8
     return Math.min(...roots(combine(1, denominator, gain, numerator)).map(root => distance(root, middle)))
   }
   let low = 0

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { analyzeLoop } from '#shared/control/analyze'
 import type { TransferFunction } from '#shared/control/types'
 import { fromRoots } from '#shared/numerics/polynomial'
-import { expectSound } from '../../helpers/locus-check'
+import { cutOff, expectSound, extentOf, sagitta } from '../../helpers/locus-check'
 import { real } from '../../helpers/loops'
 
 const analyze = (plant: TransferFunction) => analyzeLoop({ plant, rateFeedback: 0 }, { form: 'gain' })
@@ -23,6 +23,13 @@ describe('branches', () => {
     ['negative gain', { numerator: [-1, -2], denominator: [1, 2, 2, 0] }],
   ])('are sound at a trap: %s', (_, plant) => {
     expectSound(analyze(plant))
+  })
+
+  it('go round a loop between two breakaways, however small in the figure', () => {
+    const analysis = analyze({ numerator: fromRoots(real(-2.08, -0.449), 0.357), denominator: fromRoots(real(-0.638, -0.638, -0.468, 0.436)) })
+    for (const { points } of analysis.branches) {
+      points.slice(1).forEach((point, i) => expect(cutOff(analysis, points[i]!, point)).toBeLessThan(sagitta * extentOf(analysis)))
+    }
   })
 
   it('put the exact breakaway gain into the branches that meet', () => {

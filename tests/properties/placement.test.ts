@@ -125,7 +125,8 @@ describe('a root that gains give is on the locus, and its gains are found again'
       expect(missedGains(placeGains(model, controller({ integralToDerivativeRatio: kp ** 2 / (ki * kd) }), point), gains)).toBeLessThan(1e-6)
       byRatio.add(round)
       const real = roots(loopFunctions(model, controller({ pole: -1 }), gains).characteristic).find(root => root.im === 0 && root.re < -0.05)
-      if (!real) return
+      // A pole that a zero of the plant takes away stays a root at any gains: as a third root it says nothing.
+      if (!real || roots(model.plant.numerator).some(zero => distance(zero, real) < 1e-6)) return
       expect(missedGains(placeGains(model, controller({ pole: real.re }), point), gains)).toBeLessThan(1e-6)
       byPole.add(round)
     })

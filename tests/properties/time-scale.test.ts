@@ -53,11 +53,15 @@ describe('a loop in other units of time', () => {
   })
 
   it('has the same locus, drawn larger', () => {
-    const figures = ({ breakaways, imaginaryAxisCrossings, departures, arrivals, stableGain, asymptotes, rayIntersections }: LoopAnalysis) => ({
+    // Zeros that only the rounding of coefficients parts meet again at gains of 1e14: those change with the rounding.
+    // Of a pair one tells both, in whichever order they come.
+    const counts = ({ point, gain }: LoopAnalysis['breakaways'][number]) => gain < 1e10 && point.im >= 0
+    const figures = ({ breakaways: all, imaginaryAxisCrossings, departures, arrivals, stableGain, asymptotes, rayIntersections }: LoopAnalysis, breakaways = all.filter(counts)) => ({
       places: [...breakaways, ...rayIntersections!].flatMap(({ point }) => [point.re, point.im])
         .concat(imaginaryAxisCrossings.map(({ frequency }) => frequency), asymptotes?.centroid ?? []),
       gains: [...breakaways, ...rayIntersections!, ...imaginaryAxisCrossings].map(({ gain }) => gain).concat(stableGain.flat().filter(end => end !== null)),
-      angles: [...departures, ...arrivals].map(({ angleDeg }) => angleDeg),
+      // From just below -180 degrees on, so that 180 and -180, one direction, stand beside each other; those of one place are in no order.
+      angles: [...departures, ...arrivals].map(({ angleDeg }) => (angleDeg + 181) % 360).sort((a, b) => a - b),
     })
     holds(14, 120, [arbitraryLoop(1, 5), unit], (plant, factor) => {
       const analyze = (g: TransferFunction) => figures(analyzeLoop({ plant: g, rateFeedback: 0 }, { form: 'gain' }, { dampingRatio: 0.5 }))
@@ -68,8 +72,7 @@ describe('a loop in other units of time', () => {
       expect(is.gains).toHaveLength(was.gains.length)
       is.gains.forEach((gain, i) => expectScaled(gain, was.gains[i]!, 1, 'gain'))
       expect(is.angles).toHaveLength(was.angles.length)
-      // 180 and -180 degrees are one direction.
-      is.angles.forEach((angle, i) => expect(Math.abs(((angle - was.angles[i]! + 540) % 360) - 180)).toBeLessThan(1e-5))
+      is.angles.forEach((angle, i) => expect(Math.abs(angle - was.angles[i]!)).toBeLessThan(1e-5))
     })
   })
 })

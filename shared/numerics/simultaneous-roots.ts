@@ -16,7 +16,6 @@ const fineIterations = 60
  * @param p descending coefficients, first and last non-zero, the variable scaled so that roots lie around |z| = 1
  */
 export function findSimultaneously(p: Float64Array): RootPlaces {
-  const n = p.length - 1
   const slope = slopeOf(p)
   const places = startingPoints(p)
   const reversed = p.slice().reverse()

@@ -11,6 +11,7 @@ import { placeGains, type Placement } from './placement'
 import { readAll } from './readings'
 import { respondTo, sampleResponse } from './response/response'
 import { diesOut } from './stability'
+import { uncertainFigures } from './uncertainty'
 import type { Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
 import { judge } from './verdicts'
 
@@ -73,6 +74,7 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
     dominance: null,
     verdicts,
     unmet: verdicts.filter(verdict => !verdict.met).length,
+    uncertain: uncertainFigures(functions, poles, stable, readings, { amplitude, settlingBandPercent }),
   }
 }
 

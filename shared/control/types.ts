@@ -130,6 +130,9 @@ export interface Readings {
   bandwidth: number | null
 }
 
+/** What rounding may move further than its stated accuracy: a reading, the roots, or whether the loop is stable at all. */
+export type UncertainFigure = keyof Readings | 'stable' | 'closedLoopPoles'
+
 export type ResponseInput = 'reference-step' | 'reference-ramp' | 'disturbance-step'
 
 export interface ResponseOptions {
@@ -158,4 +161,6 @@ export interface DesignSolution {
   dominance: null
   verdicts: Verdict[]
   unmet: number
+  /** Figures that may not be good to the accuracy of docs/method.md. */
+  uncertain: UncertainFigure[]
 }

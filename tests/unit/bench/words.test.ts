@@ -4,6 +4,7 @@ import { demoScenario } from '~/utils/bench/demo-scenario'
 import { estimateSentence } from '~/utils/bench/estimate-sentence'
 import { sayField, sayIssue } from '~/utils/bench/field-words'
 import { negativeGainSentence } from '~/utils/bench/gain-words'
+import { uncertaintySentence } from '~/utils/bench/uncertainty-sentence'
 import { formatLimit, readingDescriptions } from '~/utils/bench/readings'
 import { differences } from '~/utils/describe-document'
 import { readingNames } from '#shared/schemas/design'
@@ -20,6 +21,13 @@ const design = (overshoot: number | null, settling: number | null, stable = true
 })
 
 describe('sentences of the bench', () => {
+  it('says what is uncertain, and keeps still where nothing is', () => {
+    expect(uncertaintySentence({ uncertain: [] })).toBeNull()
+    expect(uncertaintySentence({ uncertain: ['closedLoopPoles'] })).toMatch(/^The roots are uncertain/)
+    expect(uncertaintySentence({ uncertain: ['closedLoopPoles', 'settlingTime'] })).toMatch(/^Figures marked \? are uncertain/)
+    expect(uncertaintySentence({ uncertain: ['closedLoopPoles', 'stable', 'settlingTime'] })).toMatch(/rounding decides whether the loop is stable/)
+  })
+
   it('says how far the rules of thumb are off', () => {
     expect(estimateSentence(design(16.3, 4))).toBe('The overshoot is 6.3 points above the second-order estimate.')
     expect(estimateSentence(design(10.5, 3))).toBe('The loop settles 25 % sooner than the rule of thumb.')

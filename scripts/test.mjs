@@ -52,7 +52,7 @@ ensurePackages()
 const browser = ensureBrowser()
 check('lint', bin('eslint'), ['.'])
 check('type check', bin('nuxt'), ['typecheck'])
-tests('unit and reference tests', ['unit', 'reference'])
+tests('unit tests, properties and reference tests', ['unit', 'properties', 'reference', 'check-values'])
 if (check('build', bin('nuxt'), ['build', '--logLevel', 'silent'])) {
   tests('tests of the HTTP interface', ['api'])
   tests('browser tests', ['browser'], { CHROMIUM_PATH: browser })

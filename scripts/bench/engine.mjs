@@ -51,7 +51,7 @@ function time(work, { warm, timed } = rounds) {
 }
 
 /** The engine is TypeScript; it is bundled once into a temporary file, as the server's build does. */
-async function loadEngine() {
+export async function loadEngine() {
   const folder = mkdtempSync(join(tmpdir(), 'polewright-engine-'))
   const outfile = join(folder, 'engine.mjs')
   await build({

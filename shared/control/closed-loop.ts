@@ -47,7 +47,8 @@ export function closeLoop(model: LoopModel, controller: Controller, gains: Gains
   return { ...loop, respondTo: (input, amplitude) => limitedResponse(loop, input, amplitude, actuatorLimit, work) }
 }
 
-function rationalLoop(functions: LoopFunctions): ClosedLoop {
+/** The closed loop of a continuous controller without dead time and limit. */
+export function rationalLoop(functions: LoopFunctions): ClosedLoop {
   const poles = roots(functions.characteristic)
   const stable = poles.every(diesOut)
   return {

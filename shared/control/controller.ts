@@ -32,6 +32,8 @@ export interface ControllerPolynomials {
 
 /** Far beyond any machine, and its square is still a number. */
 const largest = 1e120
+/** What is left of a highest power below this share of it is rounding: 1 + L at infinity is 0 there. */
+const cancelled = 1e-12
 
 const gainNames: Record<Controller['form'], readonly string[]> = {
   gain: ['k'], pd: ['kp', 'kd'], pi: ['kp', 'ki'], rate: ['kp', 'kr'], lead: ['k', 'zero', 'pole'],
@@ -45,7 +47,7 @@ export function effectivePlant({ plant, rateFeedback }: LoopModel): TransferFunc
   if (rateFeedback === 0) return inRange({ numerator: polynomial.trim(plant.numerator), denominator: polynomial.trim(plant.denominator) })
   const damping = polynomial.multiplyByPower(polynomial.scale(plant.numerator, rateFeedback), 1)
   const denominator = polynomial.add(plant.denominator, damping)
-  if (polynomial.degree(denominator) < Math.max(polynomial.degree(plant.denominator), polynomial.degree(damping))) {
+  if (highestPowerCancels(plant.denominator, damping)) {
     throw new NoAnswerError('the inner rate feedback makes an algebraic loop: the highest power of s cancels', 'loop.rateFeedback')
   }
   return inRange({ numerator: polynomial.trim(plant.numerator), denominator })
@@ -71,7 +73,7 @@ export function loopFunctions(model: LoopModel, controller: Controller, gains: G
   inRange(loop)
   const characteristic = polynomial.add(loop.denominator, loop.numerator)
   const deadTime = model.deadTime ?? 0
-  if (deadTime === 0 && polynomial.degree(characteristic) < polynomial.degree(loop.denominator)) {
+  if (deadTime === 0 && highestPowerCancels(loop.denominator, loop.numerator)) {
     throw new NoAnswerError('the loop is algebraic: 1 + L(s) vanishes as s grows, so no output is defined at these gains')
   }
   const ahead = polynomial.multiply(onError, sensor.denominator)
@@ -87,6 +89,13 @@ export function loopFunctions(model: LoopModel, controller: Controller, gains: G
     error: over(polynomial.add(loop.denominator, polynomial.subtract(loop.numerator, through))),
     characteristic,
   }
+}
+
+/** Whether nothing but rounding is left of the highest power in p + q. */
+function highestPowerCancels(p: polynomial.Polynomial, q: polynomial.Polynomial): boolean {
+  const power = Math.max(polynomial.degree(p), polynomial.degree(q))
+  const [a, b] = [polynomial.coefficientOf(p, power), polynomial.coefficientOf(q, power)]
+  return Math.abs(a + b) <= cancelled * Math.abs(a)
 }
 
 /** (onError H + onOutput) G / denominator. */

@@ -14,6 +14,7 @@ import { readAll } from './readings'
 import { sampleResponse } from './response/response'
 import { steadyState } from './steady-state-figures'
 import type { ContinuousDesign, Controller, DesignSolution, Gains, LoopModel, Requirement, ResponseOptions } from './types'
+import { uncertainFigures } from './uncertainty'
 import { judge } from './verdicts'
 
 /** Where the design stands: the wanted point, or gains as they are. */
@@ -80,8 +81,14 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
     steadyState: steadyState(closed, amplitude),
     verdicts,
     unmet: verdicts.filter(verdict => !verdict.met).length,
+    uncertain: isRational(model) ? uncertainFigures(closed, readings, { amplitude, settlingBandPercent }) : [],
     ...(model.sampling === undefined ? {} : { continuous: withoutSampling(model, controller, placement.gains, { ...response, duration: shown.time[shown.time.length - 1]! }) }),
   }
+}
+
+/** Whether roots and zeros are all there is to the loop. */
+function isRational({ deadTime = 0, actuatorLimit, sampling }: LoopModel): boolean {
+  return deadTime === 0 && actuatorLimit === undefined && sampling === undefined
 }
 
 /** The loop as it was designed, over the same time. */

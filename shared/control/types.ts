@@ -152,6 +152,9 @@ export interface Readings {
   bandwidth: number | null
 }
 
+/** What rounding may move further than its stated accuracy: a reading, the roots, or whether the loop is stable at all. */
+export type UncertainFigure = keyof Readings | 'stable' | 'closedLoopPoles'
+
 export type ResponseInput = 'reference-step' | 'reference-ramp' | 'disturbance-step'
 
 export interface ResponseOptions {
@@ -213,6 +216,8 @@ export interface DesignSolution {
   steadyState: SteadyState
   verdicts: Verdict[]
   unmet: number
+  /** Figures that may not be good to the accuracy of docs/method.md. */
+  uncertain: UncertainFigure[]
   /** Present with a sampled controller: the same gains in the loop as it was designed, without sampling. */
   continuous?: ContinuousDesign
 }

@@ -1,4 +1,4 @@
-import { evaluateComplexCompensated } from './compensated'
+import { evaluateComplexCompensated, productError } from './compensated'
 
 /** Places of all roots: parallel arrays of real and imaginary parts. */
 export interface RootPlaces {
@@ -16,9 +16,7 @@ const fineIterations = 60
  * @param p descending coefficients, first and last non-zero, the variable scaled so that roots lie around |z| = 1
  */
 export function findSimultaneously(p: Float64Array): RootPlaces {
-  const n = p.length - 1
-  const slope = new Float64Array(n)
-  for (let i = 0; i < n; i++) slope[i] = p[i]! * (n - i)
+  const slope = slopeOf(p)
   const places = startingPoints(p)
   const reversed = p.slice().reverse()
   const evaluation = new Float64Array(3)
@@ -108,24 +106,59 @@ function newtonPlain(p: Float64Array, reversed: Float64Array, x: number, y: numb
   out[2] = Math.hypot(re, im) <= 4 * n * unitRoundoff * bound ? 1 : 0
 }
 
-function newtonCompensated(p: Float64Array, slope: Float64Array, x: number, y: number, out: Float64Array): void {
+function newtonCompensated(p: Float64Array, slope: Slope, x: number, y: number, out: Float64Array): void {
   const n = p.length - 1
   const size = Math.hypot(x, y)
   evaluateComplexCompensated(p, x, y, out)
   const re = out[0]!
   const im = out[1]!
-  let slopeRe = slope[0]!
-  let slopeIm = 0
   let bound = Math.abs(p[0]!)
   for (let i = 1; i <= n; i++) bound = bound * size + Math.abs(p[i]!)
-  for (let i = 1; i < n; i++) {
-    const next = slopeRe * x - slopeIm * y + slope[i]!
-    slopeIm = slopeRe * y + slopeIm * x
-    slopeRe = next
-  }
-  quotient(re, im, slopeRe, slopeIm, out)
+  evaluateSlope(slope, x, y, out)
+  quotient(re, im, out[0]!, out[1]!, out)
   // Not finite: the powers overflowed for a root very far out; the plain result stands.
   out[2] = Math.hypot(re, im) <= 4 * n * unitRoundoff * unitRoundoff * bound || !Number.isFinite(out[0]! + out[1]!) ? 1 : 0
+}
+
+/** Coefficients of p', each as a sum of two numbers, which makes it exact. */
+interface Slope { high: Float64Array, low: Float64Array }
+
+function slopeOf(p: Float64Array): Slope {
+  const n = p.length - 1
+  const high = new Float64Array(n)
+  const low = new Float64Array(n)
+  for (let i = 0; i < n; i++) {
+    high[i] = p[i]! * (n - i)
+    low[i] = productError(p[i]!, n - i, high[i]!)
+  }
+  return { high, low }
+}
+
+/** p' into out[0], out[1]: plainly where that is good to four digits, else with compensated evaluation, or Newton would not know where to go. */
+function evaluateSlope({ high, low }: Slope, x: number, y: number, out: Float64Array): void {
+  const size = Math.hypot(x, y)
+  let re = 0
+  let im = 0
+  let lowRe = 0
+  let lowIm = 0
+  let bound = 0
+  for (let i = 0; i < high.length; i++) {
+    const next = re * x - im * y + high[i]!
+    im = re * y + im * x
+    re = next
+    const nextLow = lowRe * x - lowIm * y + low[i]!
+    lowIm = lowRe * y + lowIm * x
+    lowRe = nextLow
+    bound = bound * size + Math.abs(high[i]!)
+  }
+  if (Math.hypot(re, im) > 1e4 * high.length * unitRoundoff * bound) {
+    out[0] = re
+    out[1] = im
+    return
+  }
+  evaluateComplexCompensated(high, x, y, out)
+  out[0]! += lowRe
+  out[1]! += lowIm
 }
 
 /** (a + jb)/(c + jd) into out[0], out[1]; a vanished slope gives a small sideways step instead of an infinite one. */

@@ -1,3 +1,4 @@
+import { expect } from 'vitest'
 import { distance, type Complex } from '#shared/numerics/complex'
 import { combine, evaluateComplex, evaluateSize } from '#shared/numerics/polynomial'
 import { roots } from '#shared/numerics/roots'
@@ -45,7 +46,8 @@ export function followRoot({ openLoop: { numerator, denominator } }: LoopAnalysi
 export function cutOff({ openLoop: { numerator, denominator } }: LoopAnalysis, a: BranchPoint, b: BranchPoint): number {
   const middle = { re: (a[0] + b[0]) / 2, im: (a[1] + b[1]) / 2 }
   const distanceAt = (share: number) => {
-    const gain = a[2] > 0 ? a[2] * (b[2] / a[2]) ** share : b[2] * share
+    // From a pole to beside a zero in one piece the gain runs over many decades.
+    const gain = a[2] > 0 ? a[2] * (b[2] / a[2]) ** share : b[2] * share ** 8
     return Math.min(...roots(combine(1, denominator, gain, numerator)).map(root => distance(root, middle)))
   }
   let low = 0
@@ -56,4 +58,45 @@ export function cutOff({ openLoop: { numerator, denominator } }: LoopAnalysis, a
     else low += third
   }
   return distanceAt((low + high) / 2)
+}
+
+/** Farthest a piece may reach: a share of the figure, or of the distance from the origin further out. */
+const longestPiece = 0.041
+/** Largest deviation of a piece from the true branch, likewise. */
+export const sagitta = 1.5e-3
+
+/** What those shares are taken of. */
+export function scaleAt(analysis: LoopAnalysis, ...points: BranchPoint[]): number {
+  return Math.max(extentOf(analysis), ...points.map(([re, im]) => Math.hypot(re, im)))
+}
+
+/** Checks that hold for every locus; arbitrary ones and traps go through them alike. */
+export function expectSound(analysis: LoopAnalysis): void {
+  const { poles, zeros, relativeDegree } = analysis.openLoop
+  const extent = extentOf(analysis)
+  const starts = analysis.branches.filter(({ points }) => points[0]![2] === 0).map(({ points }) => place(points[0]!))
+  expect(starts).toHaveLength(poles.length)
+  for (const pole of poles) expect(Math.min(...starts.map(start => distance(start, pole)))).toBeLessThanOrEqual(1e-12 * extent)
+  let outward = 0
+  for (const { points } of analysis.branches) {
+    points.forEach((point, i) => {
+      expect(residual(analysis, point)).toBeLessThan(1e-12)
+      if (i === 0) return
+      const before = points[i - 1]!
+      expect(point[2]).toBeGreaterThanOrEqual(before[2])
+      expect(distance(place(before), place(point)) / scaleAt(analysis, before, point)).toBeLessThan(longestPiece)
+    })
+    expect(points.length).toBeLessThan(400)
+    const end = points[points.length - 1]!
+    const atZero = zeros.some(zero => distance(zero, place(end)) < 2e-3 * extent)
+    const outside = Math.hypot(end[0], end[1]) > 5 * extent
+    expect(atZero || outside).toBe(true)
+    if (outside) outward++
+  }
+  if (relativeDegree > 0) expect(outward).toBe(relativeDegree)
+  // Conjugates: every branch has its mirror image.
+  for (const { points } of analysis.branches) {
+    const middle = points[points.length >> 1]!
+    expect(analysis.branches.some(other => other.points.some(([re, im, gain]) => re === middle[0] && im === -middle[1] && gain === middle[2]))).toBe(true)
+  }
 }

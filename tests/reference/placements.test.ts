@@ -7,6 +7,7 @@ import { placeGains } from '#shared/control/placement'
 import type { Controller, LoopModel } from '#shared/control/types'
 import { distance, type Complex } from '#shared/numerics/complex'
 import { roots } from '#shared/numerics/roots'
+import { holdDeviation } from '../helpers/published'
 import cases from '../fixtures/loops-50-digit.json'
 
 const relativeTolerance = 1e-10
@@ -19,7 +20,7 @@ function expectSameRoots(found: Complex[], wanted: Complex[]): void {
   expect(found).toHaveLength(wanted.length)
   for (const root of wanted) {
     const gap = Math.min(...found.map(other => distance(other, root)))
-    expect(gap / Math.hypot(root.re, root.im)).toBeLessThan(relativeTolerance)
+    holdDeviation('Closed-loop root', gap / Math.hypot(root.re, root.im), relativeTolerance)
   }
 }
 
@@ -32,7 +33,7 @@ describe.each(cases.placements.map((c, i) => ({ ...c, name: `${i} ${c.controller
   it('reaches the point with the same gains', () => {
     const gains = placed.gains as unknown as Record<string, number>
     expect(Object.keys(gains)).toEqual(Object.keys(c.gains))
-    for (const [name, wanted] of Object.entries(c.gains)) expect(Math.abs(gains[name]! / wanted - 1)).toBeLessThan(relativeTolerance)
+    for (const [name, wanted] of Object.entries(c.gains)) holdDeviation(`Gain of the form ${c.controller.form}`, Math.abs(gains[name]! / wanted - 1), relativeTolerance)
     expect(placed).toMatchObject({ leftoverAngle: 0, onLocus: true })
   })
 
@@ -50,7 +51,7 @@ describe.each(cases.oneGain.map((c, i) => ({ ...c, name: `${i} ${c.kind}` })))('
     expect(placed.onLocus).toBe(true)
     expect(placed.gains).toHaveProperty('k')
     const { k } = placed.gains as { k: number }
-    expect(Math.abs(k / c.gain - 1)).toBeLessThan(relativeTolerance)
+    holdDeviation('Gain of the magnitude condition', Math.abs(k / c.gain - 1), relativeTolerance)
     expectSameRoots(roots(loopFunctions(model(c.plant), controller, { k: c.gain }).characteristic), c.closedLoopPoles)
   })
 })

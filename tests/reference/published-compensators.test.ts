@@ -11,10 +11,14 @@ import type { Controller, LoopModel, TransferFunction } from '#shared/control/ty
 import type { Complex } from '#shared/numerics/complex'
 import { fromRoots } from '#shared/numerics/polynomial'
 import { roots } from '#shared/numerics/roots'
-import { loopOf, pair, real, realRootsAt, shaped } from '../helpers/loops'
+import { solveDesign } from '#shared/control/solve'
+import { loopOf, pair, product, real, realRootsAt, shaped } from '../helpers/loops'
 import { expectClose, holdAll, publishedCase, titled } from '../helpers/published'
 
 const gainAt = (model: LoopModel, controller: Controller, point: Complex) => placeGains(model, controller, point).gains as { k: number }
+/** Kv, by the ramp error of the whole loop. */
+const velocityConstant = (model: LoopModel, controller: Controller, designPoint: Complex) =>
+  1 / solveDesign(model, controller, { designPoint }).readings.steadyStateErrorRamp!
 const degrees = (radians: number) => radians * 180 / Math.PI
 const dampingForOvershoot = (percent: number) => {
   const logarithm = Math.log(percent / 100)
@@ -32,6 +36,7 @@ describe(titled('B06'), () => {
       K: plain.gain,
       s: pair(plain.point),
       third: realRootsAt(model, { form: 'gain' }, { k: plain.gain })[0]!,
+      e_step: solveDesign(model, { form: 'gain' }, { gains: { k: plain.gain } }).readings.steadyStateErrorStep!,
       K_PI: farthest(shaped([1, 0.1], [1, 0])).gain,
       K_lag: farthest({ form: 'lag', zero: -0.111, poleZeroRatio: 0.01 / 0.111 }).gain,
     }
@@ -89,11 +94,13 @@ describe(titled('B09'), () => {
       deficiency_deg: -degrees(placeGains(model, { form: 'gain' }, point).leftoverAngle),
       Kc: gainAt(model, shaped([1, c.exact('zero')[0]!], [1, c.exact('pole')[0]!]), point).k,
       Kc_method2: gainAt(model, shaped([1, 1], [1, 3]), point).k,
+      Kv_method2: velocityConstant(model, shaped([1, 1], [1, 3]), point),
     }
     holdAll(c, figures)
     // The bisector is the lead of least ratio: two zeros fall together there, so the last digits of the ratio move the zero by their root.
     expect(lead.alternatives).toEqual([])
-    holdAll(c, { zero: -bisector.zero, pole: -bisector.pole, Kc: bisector.k }, 1e-7)
+    const Kv = velocityConstant(model, shaped([1, c.exact('zero')[0]!], [1, c.exact('pole')[0]!]), point)
+    holdAll(c, { zero: -bisector.zero, pole: -bisector.pole, Kc: bisector.k, Kv }, 1e-7)
   })
 })
 
@@ -107,6 +114,8 @@ describe(titled('B10'), () => {
       s0: pair(before.find(root => root.im > 0)!),
       third0: before.find(root => root.im === 0)!.re,
       Kc: gainAt(model, { form: 'lag', zero: -0.05, poleZeroRatio: 0.1 }, { re: -0.31, im: 0.55 }).k,
+      Kv0: 1 / solveDesign(model, { form: 'gain' }, { gains: { k: 1 } }).readings.steadyStateErrorRamp!,
+      Kv: velocityConstant(model, { form: 'lag', zero: -0.05, poleZeroRatio: 0.1 }, { re: -0.31, im: 0.55 }),
     }
     holdAll(c, figures)
   })
@@ -129,6 +138,11 @@ describe(titled('B13'), () => {
     }
     holdAll(c, figures)
     expect(compensated.onLocus).toBe(true)
+    // Either lead is the one that the other leaves to be found.
+    const withOne = loopOf(product([1, 4], [1, 2]), product([1, 0.1, 4, 0], [1, pole]))
+    const { gains, alternatives } = placeGains(withOne, { form: 'lead', poleZeroRatio: pole / 2 }, point)
+    const second = [gains, ...alternatives].map(each => each as { zero: number, pole: number }).find(each => Math.abs(each.zero + 2) < 1e-6)!
+    holdAll(c, { pole: -second.pole }, 1e-9)
   })
 
   it('the compensated loop meets the ray of damping ratio 0.5 twice (second meeting and a rejected one with negative gain from mpmath)', () => {
@@ -152,7 +166,9 @@ describe(titled('B14'), () => {
     const { k, zero, pole } = [lead.gains, ...lead.alternatives].map(each => each as { k: number, zero: number, pole: number })
       .find(each => Math.abs(each.pole + 20) < 1e-6)!
     expect(pole).toBeCloseTo(-20, 9)
-    holdAll(c, { zero: -zero, K: k })
+    // What the pole at -20 leaves for the zero to give.
+    const psi_deg = -degrees(placeGains(model, shaped([1], [1, 20]), point).leftoverAngle)
+    holdAll(c, { zero: -zero, K: k, psi_deg })
 
     const first = shaped([1, 2], [1, 10])
     const found = roots(loopFunctions(model, first, { k: 70 }).characteristic)

@@ -129,7 +129,11 @@ describe('published designs', () => {
     expect(evaluateLoop(type2).readings.steadyStateErrorRamp).toBe(0)
     const characteristic = type2.denominator.map((c, i) => c + type2.numerator[i]!)
     f01.holds('Ka', 1 / stationaryError({ numerator: type2.denominator, denominator: characteristic }, 3)!)
-    const ramp = evaluateLoop({ numerator: product([f01.exact('K_10pct_ramp')[0]!], [1, 5]), denominator: product([1, 0], [1, 6], [1, 7], [1, 8]) })
+    const wanted = loopOf([1, 5], product([1, 0], [1, 6], [1, 7], [1, 8]))
+    const unit = solveDesign(wanted, { form: 'gain' }, { gains: { k: 1 } })
+    const k = unit.readings.steadyStateErrorRamp! / 0.1
+    f01.holds('K_10pct_ramp', k)
+    const ramp = solveDesign(wanted, { form: 'gain' }, { gains: { k } })
     expectClose(ramp.readings.steadyStateErrorRamp, 0.1, 1e-12, 'ramp error')
   })
 

@@ -108,6 +108,35 @@ describe(titled('E02'), () => {
   })
 })
 
+describe(titled('E01'), () => {
+  const c = publishedCase('E01')
+
+  it('ultimate gain and period, which its second method starts from', () => {
+    const [crossing] = analyzeLoop(loopOf([1], fromRoots(real(0, -1, -5))), { form: 'gain' }).imaginaryAxisCrossings
+    const [Ku, Pu] = [crossing!.gain, 2 * Math.PI / crossing!.frequency]
+    expectClose(Ku, c.inputs('Ku')[0]!, 1e-14, 'ultimate gain')
+    expectClose(Pu, c.inputs('Pu')[0]!, 1e-14, 'ultimate period')
+    holdAll(c, { ult_P: 0.5 * Ku, ult_PI: [0.45 * Ku, Pu / 1.2], ult_PI_ki: 0.45 * Ku / (Pu / 1.2), ult_PID: [0.6 * Ku, Pu / 2, Pu / 8] })
+  })
+})
+
+describe(titled('C03'), () => {
+  const c = publishedCase('C03')
+
+  it.each([2, 3, 4, 5, 6])('Butterworth polynomial of order %i: its roots lie evenly on the unit circle', (order) => {
+    const angles = Array.from({ length: order }, (_, k) => Math.PI * (1 + (1 + 2 * k - order) / (2 * order)))
+    const found = roots(c.exact(`butter${order}`))
+    for (const angle of angles) {
+      expect(Math.min(...found.map(root => Math.hypot(root.re - Math.cos(angle), root.im - Math.sin(angle))))).toBeLessThan(1e-14)
+    }
+    holdAll(c, { [`butter${order}`]: fromRoots(found) })
+  })
+
+  it.each([2, 3, 4, 5])('Bessel polynomial of order %i: its roots make it again', (order) => {
+    holdAll(c, { [`bessel${order}`]: fromRoots(roots(c.exact(`bessel${order}`))) }, 1e-13)
+  })
+})
+
 describe(titled('C06'), () => {
   const symmetrical = loopOf([4, 1], [8, 8, 0, 0])
 

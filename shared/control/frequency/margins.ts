@@ -14,6 +14,9 @@ const refinement = 1e-3
 /** At a phase crossover the refined L is real up to this share: rounding leaves far less, a place where the angle only comes near -180 degrees more. */
 const realEnough = 1e-6
 
+/** Radians: margins this close in size are one, and the sign that tells of the loop's stability is taken. A resonance crosses 1 twice, with angles that mirror. */
+const equalAngles = 1e-9
+
 /** A place where L(jw) is real and negative: w, and the factor on the gain that carries it to -1. */
 interface PhaseCrossing { frequency: number | null, factor: number }
 
@@ -22,7 +25,8 @@ interface PhaseCrossing { frequency: number | null, factor: number }
  *
  * Gain margin: factors on the overall gain, up and down, at which a closed-loop root lies on the imaginary axis; crossings at s = 0 and, for as
  * many zeros as poles, at infinity count. `gainMarginDb` is the one nearer to 0 dB, `phaseCrossover` its frequency (null at infinity).
- * Phase margin: the smallest |180 deg + arg L| over all gain crossovers, with its sign; `gainCrossover` is that crossover.
+ * Phase margin: the smallest |180 deg + arg L| over all gain crossovers, with its sign; `gainCrossover` is that crossover. Of two equally small ones the
+ * positive one in a stable loop, the negative one else.
  * Delay margin: the least dead time, seconds, that makes a stable loop unstable; for an unstable loop, the phase margin over its crossover where
  * that is negative, else null.
  * Source: K. J. Astrom, R. M. Murray, "Feedback Systems", section on stability margins.
@@ -73,7 +77,9 @@ function phaseMargins(loop: TransferFunction, unit: number, stable: boolean): Pi
     const frequency = refine(start, w => ({ value: Math.log(abs(atFrequency(loop, w))), slope: -logarithmicSlope(loop, w).im }))
     return frequency === null ? [] : [{ frequency, margin: wrapAngle(arg(atFrequency(loop, frequency)) + Math.PI) }]
   })
-  const smallest = crossings.sort((a, b) => Math.abs(a.margin) - Math.abs(b.margin))[0] ?? null
+  const least = Math.min(...crossings.map(({ margin }) => Math.abs(margin)))
+  const equallySmall = crossings.filter(({ margin }) => Math.abs(margin) - least <= equalAngles)
+  const smallest = equallySmall.find(({ margin }) => (margin > 0) === stable) ?? equallySmall[0] ?? null
   return {
     phaseMarginDeg: smallest && toDegrees(smallest.margin),
     gainCrossover: smallest && smallest.frequency * unit,

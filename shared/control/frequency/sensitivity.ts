@@ -24,8 +24,10 @@ export function sensitivityPeak(loop: TransferFunction, poles: readonly Complex[
   const characteristic = polynomial.add(denominator, numerator)
   const top = alongAxis(denominator)
   const bottom = alongAxis(characteristic)
+  // An integrator that a zero at the origin takes away leaves a plain value there.
+  const atOrigin = Math.min(polynomial.rootsAtOrigin(denominator), polynomial.rootsAtOrigin(characteristic))
   let best = Math.max(
-    ratio(polynomial.coefficientOf(denominator, 0), polynomial.coefficientOf(characteristic, 0)),
+    ratio(polynomial.coefficientOf(denominator, atOrigin), polynomial.coefficientOf(characteristic, atOrigin)),
     ratio(polynomial.leading(denominator), polynomial.leading(characteristic)),
   )
   const slopeAt = (w: number) => sample(top, bottom, w).slope

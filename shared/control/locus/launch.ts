@@ -30,6 +30,8 @@ const edge = 12
 /** How far the first piece out of a meeting reaches, in extents and as a share of the distance to the next root. */
 const reach = 0.02
 const reachShare = 0.1
+/** A root found farther than this share of its way from where it was sent has gone round a bend that a straight piece would cut. */
+const bend = 0.15
 /** A root found this near to where it was sent, as a share of the distance to the next, is the one sent: slow ones hardly leave their place. */
 const slack = 1e-3
 /** Directions this close (radians) to the axis are on it: a real place spreads symmetrically. */
@@ -99,7 +101,7 @@ function sendOut(loop: ScaledLoop, k: number, place: Complex, spread: Complex, c
     if (place.im === 0 && !real && Math.sin(angle) < 0) continue
     const target = { re: place.re + size * Math.cos(angle), im: real ? 0 : place.im + size * Math.sin(angle) }
     const root = refine(loop, k, target.re, target.im, real)
-    const astray = root === null || Math.hypot(root.re - target.re, root.im - target.im) > 0.4 * size + (count === 1 ? slack * gap : 0)
+    const astray = root === null || Math.hypot(root.re - target.re, root.im - target.im) > bend * size + (count === 1 ? slack * gap : 0)
     if (astray && !settle) return null
     const at = astray ? { ...target, velocityRe: 0, velocityIm: 0 } : root
     movers.push({ ...at, branch: noBranch, mirror: real ? null : noBranch })

@@ -6,11 +6,13 @@ import { delayedRoots } from '../delay/delayed-roots'
 import type { FactoredLoop } from './factored-loop'
 import { farGainStep, gainStepOf, type FarStation, type Launched, type Station } from './launch'
 import { march, type Branch, type Mover } from './march'
-import type { ScaledLoop } from './scaled-loop'
+import { spreadFactor, type ScaledLoop } from './scaled-loop'
 import type { Node } from './trace-branches'
 
 /** The last piece to a meeting is no longer than this (extents). */
 const nearby = 0.03
+/** Largest departure from the local expansion (z - z0)^m = c (k - k0) at which the last piece is straight enough. */
+const bend = 0.3
 const attempts = 30
 
 /**
@@ -27,7 +29,7 @@ export function meet(scaled: ScaledLoop, loop: FactoredLoop, { movers, k }: Laun
   }))
   let edge = Math.max(node.k - before, k)
   let rest = march(scaled, movers, k, edge)
-  for (let attempt = 0; attempt < attempts && scaled.allowance.moves > 0 && !allNear(rest, node); attempt++) {
+  for (let attempt = 0; attempt < attempts && scaled.allowance.moves > 0 && !(allNear(rest, node) && allStraight(scaled, rest, node, edge)); attempt++) {
     const closer = node.k - (node.k - edge) / 4
     if (closer >= node.k) break
     rest = march(scaled, rest, edge, closer)
@@ -88,6 +90,16 @@ function allNear(movers: Mover[], node: Node): boolean {
   return node.meetings.every(({ place, multiplicity }) => {
     const near = movers.filter(({ re, im }) => Math.hypot(re - place.re, im - place.im) <= nearby)
     return near.reduce((count, { mirror }) => count + (mirror !== null && place.im === 0 ? 2 : 1), 0) >= multiplicity
+  })
+}
+
+/** Whether the roots about every meeting of two come to it as the local expansion has them come. */
+function allStraight(scaled: ScaledLoop, movers: Mover[], node: Node, k: number): boolean {
+  return node.meetings.filter(({ multiplicity }) => multiplicity === 2).every(({ place }) => {
+    const expected = complex.scale(spreadFactor(scaled, node.k, place, 2), k - node.k)
+    const gaps = movers.map(mover => complex.subtract(mover, place)).sort((a, b) => complex.abs(a) - complex.abs(b))
+    const nearest = gaps[0]
+    return nearest === undefined || complex.distance(complex.multiply(nearest, nearest), expected) <= bend * complex.abs(expected)
   })
 }
 

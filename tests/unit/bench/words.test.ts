@@ -6,6 +6,7 @@ import { sayField, sayIssue } from '~/utils/bench/field-words'
 import { withTrueMinus } from '~/utils/bench/format'
 import { gainChoices } from '~/utils/bench/gain-choices'
 import { negativeGainSentence } from '~/utils/bench/gain-words'
+import { uncertaintySentence } from '~/utils/bench/uncertainty-sentence'
 import { formatLimit, readingDescriptions } from '~/utils/bench/readings'
 import { steadyStateRows } from '~/utils/bench/steady-state-rows'
 import { differences } from '~/utils/describe-document'
@@ -51,6 +52,13 @@ describe('sentences of the bench', () => {
     const shown = (stable: boolean) => steadyStateRows({ steadyState, readings: stable ? readings : { ...readings, steadyStateErrorStep: null, steadyStateErrorRamp: null }, stable }).map(row => row.shown)
     expect(shown(true)).toEqual(['1', 'infinite', '2.000\u00A01/s', '0', '0', '0.5000', 'grows'])
     expect(shown(false)).toEqual(['1', 'infinite', '2.000\u00A01/s', '0', '–', '–', '–'])
+  })
+
+  it('says what is uncertain, and keeps still where nothing is', () => {
+    expect(uncertaintySentence({ uncertain: [] })).toBeNull()
+    expect(uncertaintySentence({ uncertain: ['closedLoopPoles'] })).toMatch(/^The roots are uncertain/)
+    expect(uncertaintySentence({ uncertain: ['closedLoopPoles', 'settlingTime'] })).toMatch(/^Figures marked \? are uncertain/)
+    expect(uncertaintySentence({ uncertain: ['closedLoopPoles', 'stable', 'settlingTime'] })).toMatch(/rounding decides whether the loop is stable/)
   })
 
   it('tells negative gains in words, places of a lead left out', () => {

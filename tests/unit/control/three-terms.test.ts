@@ -8,52 +8,12 @@ import type { Controller, Gains, LoopModel, ThirdCondition } from '#shared/contr
 import { add, distance, divide, multiply, one, type Complex } from '#shared/numerics/complex'
 import { roots } from '#shared/numerics/roots'
 import { loopOf, shaped } from '../../helpers/loops'
-import { seededRandom } from '../../helpers/random'
 
 interface ThreeGains { kp: number, ki: number, kd: number }
 
-const random = seededRandom(305)
-const size = () => Math.exp(2 * random() - 1)
-
-/** A plant of order 2 to 4 with lags and perhaps an integrator, and half of the time a sensor that lags. */
-function randomModel(): LoopModel {
-  const order = 2 + Math.floor(random() * 3)
-  let denominator = random() < 0.5 ? [1, 0] : [size(), 1]
-  while (denominator.length - 1 < order) {
-    const [a, b] = [size(), 1]
-    denominator = [...denominator.map(c => a * c), 0].map((c, i) => c + (i > 0 ? b * denominator[i - 1]! : 0))
-  }
-  return { plant: { numerator: [size()], denominator }, rateFeedback: 0, ...(random() < 0.5 ? { sensor: { numerator: [1], denominator: [0.2 * size(), 1] } } : {}) }
-}
-
 const controllerOf = (third: ThirdCondition, filter: number | undefined): Controller => ({ form: 'pid', third, ...(filter ? { derivativeFilter: filter } : {}) })
 
-function nearestTo(all: Gains[], wanted: ThreeGains): number {
-  return Math.min(...(all as ThreeGains[]).map(({ kp, ki, kd }) => Math.max(Math.abs(kp / wanted.kp - 1), Math.abs(ki / wanted.ki - 1), Math.abs(kd / wanted.kd - 1))))
-}
-
 describe('a PID', () => {
-  it('is found again from any complex root that its gains give, by the ratio of its times and by a third real root', () => {
-    let [byRatio, byPole] = [0, 0]
-    while (byRatio < 150 || byPole < 100) {
-      const model = randomModel()
-      const gains: ThreeGains = { kp: size(), ki: size(), kd: size() }
-      const filter = random() < 0.5 ? 0.1 * size() : undefined
-      const some = controllerOf({ pole: -1 }, filter)
-      const closed = roots(loopFunctions(model, some, gains).characteristic)
-      const pair = closed.find(root => root.im > 0.05 && root.im > 0.1 * Math.abs(root.re))
-      if (!pair) continue
-      const ratio = controllerOf({ integralToDerivativeRatio: gains.kp ** 2 / (gains.ki * gains.kd) }, filter)
-      const first = placeGains(model, ratio, pair)
-      expect(nearestTo([first.gains, ...first.alternatives], gains)).toBeLessThan(1e-6)
-      byRatio += 1
-      const real = closed.find(root => root.im === 0)
-      if (!real) continue
-      expect(nearestTo([placeGains(model, controllerOf({ pole: real.re }, filter), pair).gains], gains)).toBeLessThan(1e-6)
-      byPole += 1
-    }
-  })
-
   it('comes with positive gains first, then with the larger integral gain', () => {
     const model = loopOf([1], [1, 3, 2, 0])
     const placement = placeGains(model, controllerOf({ integralToDerivativeRatio: 4 }, undefined), { re: -1, im: 1 })

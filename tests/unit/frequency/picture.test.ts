@@ -1,3 +1,4 @@
+import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { frequencyResponse } from '#shared/control/frequency/frequency-response'
 import { loopFunctions } from '#shared/control/controller'
@@ -12,7 +13,7 @@ import { describeFrequency, sayFigures } from '~/utils/frequency/words'
 import { xOf, yOf } from '~/utils/response/draw'
 import { evaluateLoop, loopOf, product } from '../../helpers/loops'
 import { seededRandom } from '../../helpers/random'
-import { randomLoop } from '../../helpers/random-loop'
+import { arbitraryLoop } from '../../helpers/arbitrary-loop'
 
 const size = { width: 780, height: 220 }
 const plain = (text: string) => text.replace(/\u00A0/g, ' ').replace(/\u2212/g, '-')
@@ -67,8 +68,7 @@ describe('the drawing of the loop', () => {
 
   it('keeps every figure in the drawing, for random loops in rooms of any size', () => {
     const random = seededRandom(31)
-    for (let n = 0; n < 80; n++) {
-      const { numerator, denominator } = randomLoop(random, 1 + Math.floor(random() * 6))
+    for (const [n, { numerator, denominator }] of fc.sample(arbitraryLoop(1, 6), { seed: 31, numRuns: 80 }).entries()) {
       const answer = answerOf(numerator, denominator)
       const room = { width: 300 + 900 * random(), height: 150 + 200 * random() }
       const panes = drawFrequency(answer, room, room.width < 600 ? 'loop' : null)

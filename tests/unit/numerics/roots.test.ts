@@ -138,6 +138,15 @@ describe('roots', () => {
     expect(found.filter(root => root.im > 0)).toHaveLength(2)
   })
 
+  it('parts forty roots that all but one last coefficient put into one place', () => {
+    // (s + 1)^40 + 1/2, its coefficients below 2^53 and so exact: the roots lie evenly on a circle about -1.
+    const p = fromRoots(Array.from({ length: 40 }, () => ({ re: -1, im: 0 })))
+    p[40]! += 0.5
+    const radius = 0.5 ** (1 / 40)
+    const wanted = Array.from({ length: 40 }, (_, k) => Math.PI * (2 * k + 1) / 40).map(angle => ({ re: -1 + radius * Math.cos(angle), im: radius * Math.sin(angle) }))
+    expect(worstDeviation(roots(p), wanted)).toBeLessThan(1e-13)
+  })
+
   it('never throws or loses a root over hostile coefficients', () => {
     const random = seededRandom(5)
     for (let round = 0; round < 300; round++) {

@@ -17,7 +17,7 @@ function thrown(work: () => unknown): unknown {
 
 describe('a loop of a request', () => {
   it('is the same whichever way the plant is given', () => {
-    const expected = { plant: { numerator: [2], denominator: [1, 2, 5, 0] }, rateFeedback: 0 }
+    const expected = { plant: { numerator: [2], denominator: [1, 2, 5, 0] }, rateFeedback: 0, deadTime: 0, actuatorLimit: undefined, sampling: undefined }
     const poles = [{ re: 0, im: 0 }, { re: -1, im: 2 }, { re: -1, im: -2 }]
     expect(resolveLoop({ plant: { form: 'coefficients', numerator: [0, 0, 2], denominator: [0, 1, 2, 5, 0] } })).toEqual(expected)
     expect(resolveLoop({ plant: { form: 'expression', expression: 'g/(s*(s^2+2*s+5))', parameters: { g: { value: 2 } } } })).toEqual(expected)

@@ -2,6 +2,7 @@ import type { Complex } from '../numerics/complex'
 import { roots } from '../numerics/roots'
 import { loopFunctions, type LoopFunctions } from './controller'
 import { delayedLoop } from './delay/delayed-loop'
+import type { PointwiseLoop } from './frequency/along-grid'
 import { bandwidth } from './frequency/bandwidth'
 import { margins, type Margins } from './frequency/margins'
 import { sensitivityPeak } from './frequency/sensitivity'
@@ -24,6 +25,10 @@ export interface ClosedLoop {
   poles: Complex[]
   stable: boolean
   frequencyFigures(): FrequencyFigures
+  /** L and T point by point, where they are no ratio of polynomials in s. */
+  pointwise?(): PointwiseLoop
+  /** rad/s: half the sampling rate of a sampled loop. */
+  highestFrequency?: number
   /** What r - y tends to for a unit step (1), ramp (2) or parabola (3); null where it grows. */
   stationaryError(integrators: 1 | 2 | 3): number | null
   /** Output and controller output after a unit input. */

@@ -1,12 +1,12 @@
 import { describe, expect, it } from 'vitest'
-import { loopFunctions } from '#shared/control/controller'
+import { closeLoop } from '#shared/control/closed-loop'
 import { frequencyResponse, type FrequencyOptions } from '#shared/control/frequency/frequency-response'
 import { evaluateLoop, loopOf, product } from '../helpers/loops'
 import { publishedCase } from '../helpers/published'
 import { seededRandom } from '../helpers/random'
 
 function over(numerator: number[], denominator: number[], options?: FrequencyOptions) {
-  return frequencyResponse(loopFunctions(loopOf(numerator, denominator), { form: 'gain' }, { k: 1 }), options)
+  return frequencyResponse(closeLoop(loopOf(numerator, denominator), { form: 'gain' }, { k: 1 }), options)
 }
 
 /** L of a unity-feedback loop at one frequency. */

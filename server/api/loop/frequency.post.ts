@@ -1,4 +1,4 @@
-import { loopFunctions } from '#shared/control/controller'
+import { closeLoop } from '#shared/control/closed-loop'
 import { frequencyResponse } from '#shared/control/frequency/frequency-response'
 import { placementOf } from '#shared/control/solve'
 import { frequencyBodySchema } from '#shared/schemas/design'
@@ -14,6 +14,6 @@ export default defineEventHandler(async (event) => {
   return compute(event, () => {
     const [model, controller] = [resolveLoop(body.loop), resolveController(body.controller)]
     const { gains } = placementOf(model, controller, designTarget(body))
-    return frequencyResponse(loopFunctions(model, controller, gains), { from, to, samples })
+    return frequencyResponse(closeLoop(model, controller, gains), { from, to, samples })
   })
 })

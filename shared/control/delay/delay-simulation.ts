@@ -12,6 +12,10 @@ import { polynomialAt, type Trajectory } from '../response/trajectory'
 import { relativeDegree } from '../transfer-function'
 import type { ResponseInput, TransferFunction } from '../types'
 
+/** How much finer than the loop's own pace the corners of a limited output are resolved, and for how many dead times after the last one. */
+const cornerShare = 8
+const periodsToSmooth = 4
+
 /**
  * A closed loop with dead time, followed period of the dead time by period: what the plant gets now is what the controller put out one dead time ago, so each
  * period is a linear system with a known input, carried exactly (the method of steps).
@@ -20,7 +24,9 @@ import type { ResponseInput, TransferFunction } from '../types'
 export class DelaySimulation {
   readonly output = new PiecewiseSignal()
   readonly effort = new PiecewiseSignal()
-  private readonly grid: StepPropagator[]
+  private readonly fine: StepPropagator[]
+  private readonly smooth: StepPropagator[]
+  private grid: StepPropagator[]
   private readonly free: Trajectory
   private readonly impulse: number
   /** What an impulse of size 1 at the plant input adds to the state. */
@@ -44,10 +50,13 @@ export class DelaySimulation {
     const plant: TransferFunction = { numerator: disturbance.numerator, denominator: loop.denominator }
     const outputs = [plant, loop].map(g => ({ weights: system.outputOf(g.numerator), direct: relativeDegree(g) === 0 ? leading(g.numerator) / leading(g.denominator) : 0 }))
     const prepared = new Map<number, StepPropagator>()
-    this.grid = gridOf(deadTime, poles, limit < Infinity ? 8 * crossover : crossover).map((length) => {
+    const prepare = (always: number) => gridOf(deadTime, poles, always).map((length) => {
       if (!prepared.has(length)) prepared.set(length, new StepPropagator(system, outputs, length))
       return prepared.get(length)!
     })
+    this.smooth = prepare(crossover)
+    this.fine = limit < Infinity ? prepare(cornerShare * crossover) : this.smooth
+    this.grid = this.fine
     const integrations = input === 'reference-ramp' ? 2 : 1
     const silent: TransferFunction = { numerator: [0], denominator: [1] }
     this.free = respond(input === 'disturbance-step' ? silent : controller, input === 'disturbance-step' ? [] : roots(controller.denominator), integrations)
@@ -78,6 +87,7 @@ export class DelaySimulation {
   }
 
   private followPeriod(): void {
+    this.chooseGrid()
     const { grid, disturbed } = this
     if (this.periods === 1 && this.impulse !== 0) this.state = this.state.map((value, i) => value + this.kick[i]! * this.impulse)
     let start = this.time
@@ -99,6 +109,20 @@ export class DelaySimulation {
       return u
     })
     this.periods += 1
+  }
+
+  /** Corners that a limit cuts ask for short pieces, until the loop has smoothed them. */
+  private chooseGrid(): void {
+    const { deadTime } = this.functions
+    const wanted = this.limit < Infinity && this.time <= this.limitedUntil + periodsToSmooth * deadTime ? this.fine : this.smooth
+    if (wanted === this.grid) return
+    this.grid = wanted
+    let start = this.time - deadTime
+    this.before = wanted.map(({ length }) => {
+      const values = Float64Array.from({ length: nodesPerPiece }, (_, node) => this.effort.at(start + length * node / (nodesPerPiece - 1) * (1 - 1e-12)))
+      start += length
+      return values
+    })
   }
 }
 

@@ -14,11 +14,13 @@ export function delayedLoop(functions: LoopFunctions, work: Work): ClosedLoop {
   const found = delayedRoots({ ...loop, deadTime })
   const stable = delayedStable(found)
   const { poles } = found
+  const pointwise = () => delayedFrequency(functions, poles)
   return {
     functions,
     poles,
     stable,
-    frequencyFigures: () => figuresAlongGrid(delayedFrequency(functions, poles), stable),
+    pointwise,
+    frequencyFigures: () => figuresAlongGrid(pointwise(), stable),
     stationaryError: integrators => delayedStationaryError(functions, integrators),
     respondTo: input => delayedResponse(functions, input, poles, stable, actingSpeed(functions, poles), work),
   }

@@ -1,12 +1,12 @@
+import { abs, arg } from '../../numerics/complex'
 import { findMaximum } from '../../numerics/find-maximum'
 import * as polynomial from '../../numerics/polynomial'
-import { roots } from '../../numerics/roots'
-import { toDegrees } from '../angle'
-import type { LoopFunctions } from '../controller'
+import { toDegrees, wrapAngle } from '../angle'
+import type { ClosedLoop } from '../closed-loop'
 import { NoAnswerError } from '../errors'
 import { cancelCommon, cancellationWidth, factor, type FactoredLoop } from '../locus/factored-loop'
 import type { FrequencyResponse } from '../types'
-import { sampleFrequencies, usualRange } from './sample-frequencies'
+import { sampleFrequencies, usualRange, type FrequencyRange } from './sample-frequencies'
 
 export interface FrequencyOptions {
   /** rad/s; where absent, half a decade to one and a half beyond the break frequencies, at whole decades. */
@@ -14,8 +14,6 @@ export interface FrequencyOptions {
   to?: number
   /** Of the even grid; more points stand round lightly damped roots. */
   samples?: number
-  /** Seconds by which the loop answers late: e^(-jwT) turns its phase by -wT. */
-  deadTime?: number
 }
 
 const usualSamples = 400
@@ -39,22 +37,26 @@ interface Sample { magnitude: number, phase: number, sensitivity: number, comple
  * of one to the left of it does. S and T follow from ln |L| and arg L, whichever of L and 1/L is the smaller, so that nothing overflows. Figures in
  * dB end at +-400. Source: K. J. Astrom, R. M. Murray, "Feedback Systems", chapters on frequency domain analysis and design.
  *
- * @param functions at the present gains
+ * A dead time turns the phase by -w T. Of a sampled loop they are those at z = e^(jw period), up to half the sampling rate, its phase followed from point to point.
+ *
  * @param options.samples from 2 on; `from` < `to`, both positive
  * @throws NoAnswerError where the gains are zero, so that there is no loop
  */
-export function frequencyResponse({ loop, characteristic }: Pick<LoopFunctions, 'loop' | 'characteristic'>, options: FrequencyOptions = {}): FrequencyResponse {
+export function frequencyResponse(closed: ClosedLoop, options: FrequencyOptions = {}): FrequencyResponse {
+  const { functions: { loop, deadTime }, highestFrequency } = closed
   if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to draw over frequency', 'gains')
-  const factored = cancelCommon(factor({ ...loop, deadTime: options.deadTime ?? 0 }), cancellationWidth).loop
-  const places = [...factored.zeros, ...factored.poles, ...roots(characteristic)]
-  const at = sampler(factored, options.deadTime ?? 0)
-  const usual = usualRange(places)
+  const factored = cancelCommon(factor({ ...loop, deadTime }), cancellationWidth).loop
+  const places = [...factored.zeros, ...factored.poles, ...closed.poles.filter(pole => !isOfDelay(pole, deadTime))]
+  const usual = rangeWithin(usualRange(places), deadTime, highestFrequency)
   const range = {
     from: options.from ?? Math.min(usual.from, (options.to ?? Infinity) / 10),
-    to: options.to ?? Math.max(usual.to, 10 * (options.from ?? 0)),
+    to: Math.min(highestFrequency ?? Infinity, options.to ?? Math.max(usual.to, 10 * (options.from ?? 0))),
   }
+  if (!(range.from < range.to)) throw new NoAnswerError('the frequencies asked for lie beyond half the sampling rate', 'from')
+  const exact = sampler(factored, deadTime)
+  const at = highestFrequency === undefined ? exact : pointwiseSampler(closed, exact)
   const frequency = sampleFrequencies(range, options.samples ?? usualSamples, places)
-  const samples = frequency.map(at)
+  const samples = highestFrequency === undefined ? frequency.map(at) : unwrapped(frequency.map(at))
   return {
     frequency,
     magnitudeDb: samples.map(({ magnitude }) => decibels(magnitude)),
@@ -63,6 +65,39 @@ export function frequencyResponse({ loop, characteristic }: Pick<LoopFunctions, 
     complementaryDb: samples.map(({ complementary }) => decibels(complementary)),
     sensitivityPeakFrequency: peakFrequency(w => at(w).sensitivity, sampleFrequencies(usual, usualSamples, places)),
   }
+}
+
+/** Roots that the delay brings, and beyond which its phase turns without end. */
+function isOfDelay({ re }: { re: number }, deadTime: number): boolean {
+  return deadTime > 0 && re < -3 / deadTime
+}
+
+/** The usual range, but not far beyond one turn of the delay, nor beyond half the sampling rate. */
+function rangeWithin({ from, to }: FrequencyRange, deadTime: number, highestFrequency = Infinity): FrequencyRange {
+  const turned = deadTime > 0 ? 10 ** Math.ceil(Math.log10(2 * Math.PI / deadTime)) : Infinity
+  const end = Math.min(Math.max(turned, 100 * from), to, highestFrequency)
+  return { from: Math.min(from, end / 10), to: end }
+}
+
+/** The sampled loop, its phase within half a turn of the continuous one. */
+function pointwiseSampler(closed: ClosedLoop, near: (w: number) => Sample): (w: number) => Sample {
+  const { loop } = closed.pointwise!()
+  return (w) => {
+    const value = loop(w)
+    const expected = near(w).phase
+    const magnitude = Math.log(Math.max(abs(value), Number.MIN_VALUE))
+    const phase = expected + wrapAngle(arg(value) - expected)
+    return { magnitude, phase, ...parts(magnitude, phase) }
+  }
+}
+
+/** Phases followed from the first one on: each within half a turn of the one before. */
+function unwrapped(samples: Sample[]): Sample[] {
+  let before = samples[0]!.phase
+  return samples.map((sample) => {
+    before += wrapAngle(sample.phase - before)
+    return { ...sample, phase: before }
+  })
 }
 
 function sampler(loop: FactoredLoop, deadTime: number): (w: number) => Sample {
@@ -78,7 +113,7 @@ function sampler(loop: FactoredLoop, deadTime: number): (w: number) => Sample {
       magnitude -= Math.log(Math.hypot(re, w - im))
       phase -= angleGained(re, im, w)
     }
-    return { magnitude, phase, ...closed(magnitude, phase) }
+    return { magnitude, phase, ...parts(magnitude, phase) }
   }
 }
 
@@ -98,7 +133,7 @@ function angleGained(re: number, im: number, w: number): number {
 }
 
 /** ln |S| and ln |T|, through the smaller one of L and 1/L. */
-function closed(magnitude: number, phase: number): Pick<Sample, 'sensitivity' | 'complementary'> {
+function parts(magnitude: number, phase: number): Pick<Sample, 'sensitivity' | 'complementary'> {
   const size = Math.exp(-Math.abs(magnitude))
   const distance = Math.log(Math.hypot(1 + size * Math.cos(phase), size * Math.sin(phase)))
   return magnitude > 0

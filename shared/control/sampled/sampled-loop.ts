@@ -20,11 +20,14 @@ export function sampledLoop(model: LoopModel, controller: Controller, gains: Gai
   const held = heldPlant(model, sampling)
   const law = sampledController(controller, gains, period)
   const { poles, stable } = sampledRoots(held, law, period)
+  const pointwise = () => sampledFrequency(held, law, functions, poles, period)
   return {
     functions,
     poles,
     stable,
-    frequencyFigures: () => figuresAlongGrid(sampledFrequency(held, law, functions, poles, period), stable),
+    pointwise,
+    highestFrequency: Math.PI / period,
+    frequencyFigures: () => figuresAlongGrid(pointwise(), stable),
     stationaryError: integrators => delayedStationaryError(functions, integrators),
     respondTo(input, amplitude) {
       const limit = model.actuatorLimit === undefined ? Infinity : model.actuatorLimit / Math.abs(amplitude)

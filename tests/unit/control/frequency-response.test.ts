@@ -1,6 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { loopFunctions } from '#shared/control/controller'
+import { closeLoop } from '#shared/control/closed-loop'
 import { NoAnswerError } from '#shared/control/errors'
 import { frequencyResponse, type FrequencyOptions } from '#shared/control/frequency/frequency-response'
 import { sampleFrequencies, usualRange } from '#shared/control/frequency/sample-frequencies'
@@ -14,13 +14,13 @@ import { expectClose } from '../../helpers/published'
 import { arbitraryLoop } from '../../helpers/arbitrary-loop'
 
 /** L, S and T of a unity-feedback loop with this loop transfer, at one frequency. */
-function at(numerator: number[], denominator: number[], w: number, options: FrequencyOptions = {}) {
-  const found = over(numerator, denominator, { from: w, to: 2 * w, samples: 20, ...options })
+function at(numerator: number[], denominator: number[], w: number, deadTime = 0) {
+  const found = over(numerator, denominator, { from: w, to: 2 * w, samples: 20 }, deadTime)
   return { db: found.magnitudeDb[0]!, deg: found.phaseDeg[0]!, s: found.sensitivityDb[0]!, t: found.complementaryDb[0]! }
 }
 
-function over(numerator: number[], denominator: number[], options?: FrequencyOptions) {
-  return frequencyResponse(loopFunctions(loopOf(numerator, denominator), { form: 'gain' }, { k: 1 }), options)
+function over(numerator: number[], denominator: number[], options?: FrequencyOptions, deadTime = 0) {
+  return frequencyResponse(closeLoop({ ...loopOf(numerator, denominator), deadTime }, { form: 'gain' }, { k: 1 }), options)
 }
 
 const decibels = (size: number) => 20 * Math.log10(size)
@@ -82,7 +82,7 @@ describe('loops whose figures are known in closed form', () => {
 
   it('dead time turns the phase by -wT and leaves the size', () => {
     const [w, deadTime] = [30, 0.4]
-    const late = at([5], [1, 1], w, { deadTime })
+    const late = at([5], [1, 1], w, deadTime)
     expect(late.deg).toBeCloseTo((-Math.atan(w) - w * deadTime) * 180 / Math.PI, 9)
     const value = divide({ re: 5 * Math.cos(w * deadTime), im: -5 * Math.sin(w * deadTime) }, { re: 1, im: w })
     expect(late.db).toBeCloseTo(decibels(abs(value)), 10)
@@ -141,6 +141,24 @@ describe('random loops', () => {
     }
   })
 
+  it('of a sampled loop: the margins of the readings, up to half the sampling rate, without a jump of the phase', () => {
+    const model: LoopModel = { plant: { numerator: [30], denominator: [1, 8, 15, 0] }, rateFeedback: 0, deadTime: 0.013, sampling: { period: 0.05, computingDelay: true } }
+    const closed = closeLoop(model, { form: 'gain' }, { k: 0.5 })
+    const { phaseMarginDeg, gainCrossover, gainMarginDb, phaseCrossover } = closed.frequencyFigures()
+    const reading = (w: number) => {
+      const found = frequencyResponse(closed, { from: w, to: 1.1 * w, samples: 20 })
+      return { db: found.magnitudeDb[0]!, deg: found.phaseDeg[0]! }
+    }
+    expect(reading(gainCrossover!).db).toBeCloseTo(0, 8)
+    expect(180 + reading(gainCrossover!).deg).toBeCloseTo(phaseMarginDeg!, 7)
+    expect(-reading(phaseCrossover!).db).toBeCloseTo(gainMarginDb!, 7)
+    const whole = frequencyResponse(closed)
+    expect(whole.frequency.at(-1)).toBeCloseTo(Math.PI / 0.05, 10)
+    expect(Math.max(...whole.phaseDeg.slice(1).map((phase, i) => Math.abs(phase - whole.phaseDeg[i]!)))).toBeLessThan(60)
+    expect(whole.phaseDeg[0]!).toBeCloseTo(-90, 0)
+    expect(() => frequencyResponse(closed, { from: 100, to: 200 })).toThrow(/sampling rate/)
+  })
+
   it('of every controller form: L is that of the loop broken at the plant input', () => {
     const model: LoopModel = { plant: { numerator: [2], denominator: [1, 1, 0] }, sensor: { numerator: [1], denominator: [0.1, 1] }, rateFeedback: 0.3 }
     const designs: [Controller, Gains][] = [
@@ -148,9 +166,9 @@ describe('random loops', () => {
       [{ form: 'lead', poleZeroRatio: 5 }, { k: 2, zero: -1, pole: -5 }],
     ]
     for (const [controller, gains] of designs) {
-      const functions = loopFunctions(model, controller, gains)
-      const found = frequencyResponse(functions)
-      found.frequency.forEach((w, i) => expect(found.magnitudeDb[i]).toBeCloseTo(decibels(abs(evaluateAt(functions.loop, { re: 0, im: w }))), 8))
+      const closed = closeLoop(model, controller, gains)
+      const found = frequencyResponse(closed)
+      found.frequency.forEach((w, i) => expect(found.magnitudeDb[i]).toBeCloseTo(decibels(abs(evaluateAt(closed.functions.loop, { re: 0, im: w }))), 8))
     }
   })
 })
@@ -186,7 +204,7 @@ describe('where it looks', () => {
   })
 
   it('draws nothing without a loop', () => {
-    const none = loopFunctions(loopOf([1], [1, 1]), { form: 'gain' }, { k: 0 })
+    const none = closeLoop(loopOf([1], [1, 1]), { form: 'gain' }, { k: 0 })
     expect(() => frequencyResponse(none)).toThrow(NoAnswerError)
   })
 

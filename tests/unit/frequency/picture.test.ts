@@ -1,7 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { frequencyResponse } from '#shared/control/frequency/frequency-response'
-import { loopFunctions } from '#shared/control/controller'
+import { closeLoop } from '#shared/control/closed-loop'
 import type { FrequencyAnswer } from '~/utils/frequency/answer'
 import { markedFrequencies, nextMark, readingsNear } from '~/utils/frequency/marks'
 import { frequencyAt, type Pane } from '~/utils/frequency/pane'
@@ -20,7 +20,7 @@ const plain = (text: string) => text.replace(/\u00A0/g, ' ').replace(/\u2212/g, 
 
 function answerOf(numerator: number[], denominator: number[]): FrequencyAnswer {
   const { readings, stable } = evaluateLoop({ numerator, denominator })
-  return { response: frequencyResponse(loopFunctions(loopOf(numerator, denominator), { form: 'gain' }, { k: 1 }), { samples: 240 }), readings, stable }
+  return { response: frequencyResponse(closeLoop(loopOf(numerator, denominator), { form: 'gain' }, { k: 1 }), { samples: 240 }), readings, stable }
 }
 
 const pane = (answer: FrequencyAnswer, name: Pane['name']) => drawFrequency(answer, size, name)[0]!

@@ -14,6 +14,7 @@ const effortShare = 0.27
 export function useResponsePicture(options: {
   solution: MaybeRefOrGetter<DesignSolution | null>
   requirements: MaybeRefOrGetter<readonly Requirement[]>
+  actuatorLimit: MaybeRefOrGetter<number | null>
   width: MaybeRefOrGetter<number>
   height: MaybeRefOrGetter<number>
 }) {
@@ -37,9 +38,12 @@ export function useResponsePicture(options: {
     const estimate = final !== null ? estimateCurve(solution, final) : null
     const reference = referenceOf(response.input, response.time)
     const always = [0, ...(final === null ? [] : [final]), ...(limits?.overshoot ? [limits.overshoot.ceiling] : [])]
-    outputRange = calmRange(outputRange, extentOf([response.output, estimate ?? [], reference ?? []], always))
+    // An unstable design without sampling would squash the picture of the loop that is there.
+    const continuous = solution.continuous?.stable ? solution.continuous.response : null
+    const actuatorLimit = toValue(options.actuatorLimit)
+    outputRange = calmRange(outputRange, extentOf([response.output, continuous?.output ?? [], estimate ?? [], reference ?? []], always))
     effortRange = calmRange(effortRange, extentOf([response.effort], [0]))
-    return { ...panels(width, height, response.time, outputRange, effortRange), response, readings, stable, final, limits, estimate, reference, isStep }
+    return { ...panels(width, height, response.time, outputRange, effortRange), response, continuous, actuatorLimit, readings, stable, final, limits, estimate, reference, isStep }
   })
 }
 

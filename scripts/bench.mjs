@@ -1,5 +1,5 @@
 import { benchBrowser } from './bench/browser.mjs'
-import { benchEngine } from './bench/engine.mjs'
+import { benchEngine, benchGrowth } from './bench/engine.mjs'
 import { benchHostile } from './bench/hostile.mjs'
 import { benchHttp } from './bench/http.mjs'
 import { printTable } from './bench/table.mjs'
@@ -13,6 +13,7 @@ ensureBuild()
 
 console.log(`Node ${process.version} on ${process.platform} ${process.arch}\n`)
 printTable('Engine, in process (ms)', await benchEngine())
+printTable('Growth with the order of the plant: medians (ms)', await benchGrowth())
 printTable('Hostile loops, in process: the dearest of each (ms)', await benchHostile())
 await withTemporaryServer(async (origin) => {
   printTable('POST /api/design/solve over keep-alive HTTP, order 3 and 6', await benchHttp(origin))

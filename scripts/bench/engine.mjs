@@ -39,6 +39,34 @@ export async function benchEngine() {
   return rows
 }
 
+const gainForm = { form: 'gain' }
+/** What a loop may have beside its poles, each alone. */
+const parts = {
+  'solve': {},
+  'with dead time': { deadTime: 0.05 },
+  'sampled': { sampling: { period: 0.02, computingDelay: true } },
+  'limited': { actuatorLimit: 0.5 },
+}
+
+/** Medians by order: how each kind of answer grows with the loop. */
+export async function benchGrowth() {
+  const engine = await loadEngine()
+  return [2, 4, 6, 8, 10, 12, 16, 20].map((order) => {
+    const loop = loopOfOrder(order)
+    const point = n => ({ re: -0.3 - (n % 40) / 200, im: 0.4 + (n % 40) / 150 })
+    const median = (work, counts) => time(work, counts).median
+    const row = { order }
+    for (const [name, part] of Object.entries(parts)) {
+      row[name] = median(n => engine.solveDesign({ ...loop, ...part }, gainForm, { designPoint: point(n) }, { requirements }), { warm: 20, timed: 80 })
+    }
+    row.analyze = median(n => engine.analyzeLoop(loop, gainForm, { dampingRatio: 0.3 + (n % 40) / 100 }), { warm: 10, timed: 60 })
+    row['analyze, dead time'] = median(n => engine.analyzeLoop({ ...loop, deadTime: 0.05 }, gainForm, { dampingRatio: 0.3 + (n % 40) / 100 }), { warm: 5, timed: 25 })
+    const { gains } = engine.solveDesign(loop, gainForm, { designPoint: { re: -0.4, im: 0.6 } })
+    row['gain window'] = median(() => engine.gainWindow(loop, gainForm, gains, sixRequirements), { warm: 3, timed: 15 })
+    return row
+  })
+}
+
 function time(work, { warm, timed } = rounds) {
   for (let n = 0; n < warm; n += 1) work(n)
   const times = []

@@ -69,16 +69,30 @@ function interpolate(values: Float64Array, position: number): number {
 
 /** Derivative of the interpolating polynomial per node distance: that of degree 7 through its values at the nodes. */
 function slopeOf(values: Float64Array, position: number): number {
-  const slopes = new Float64Array(nodesPerPiece)
+  const nearest = Math.round(position)
+  return position === nearest ? slopeAtNode(values, nearest) : interpolate(Float64Array.from(values, (_, node) => slopeAtNode(values, node)), position)
+}
+
+function slopeAtNode(values: Float64Array, node: number): number {
+  let slope = 0
+  for (let j = 0; j < nodesPerPiece; j++) slope += differentiation[node * nodesPerPiece + j]! * values[j]!
+  return slope
+}
+
+/** Weights of the values in the slope at each node. */
+const differentiation = differentiationMatrix()
+
+function differentiationMatrix(): Float64Array {
+  const weights = new Float64Array(nodesPerPiece * nodesPerPiece)
   for (let i = 0; i < nodesPerPiece; i++) {
-    if (position === Math.round(position) && i !== position) continue
-    let slope = 0
     for (let j = 0; j < nodesPerPiece; j++) {
-      if (j !== i) slope += barycentric[j]! / barycentric[i]! * (values[j]! - values[i]!) / (i - j)
+      if (j === i) continue
+      const weight = barycentric[j]! / barycentric[i]! / (i - j)
+      weights[i * nodesPerPiece + j] = weight
+      weights[i * nodesPerPiece + i]! -= weight
     }
-    slopes[i] = slope
   }
-  return interpolate(slopes, position)
+  return weights
 }
 
 /** What follows on the pieces, and what the signal tends to. */
@@ -109,7 +123,7 @@ export function trajectoryOf(signal: PiecewiseSignal, { remains, decays, impulsi
     const node = k % nodesPerPiece
     const time = nodeTime(k)
     return {
-      time, value: signal.values[i]![node]! - steady(time), slope: slopeOf(signal.values[i]!, node) * last / signal.lengths[i]! - polynomialAt(rate, time),
+      time, value: signal.values[i]![node]! - steady(time), slope: slopeAtNode(signal.values[i]!, node) * last / signal.lengths[i]! - polynomialAt(rate, time),
       envelope: betweenNodes * suffix[i]!,
     }
   }

@@ -10,6 +10,9 @@ const gone = Math.log(1e9)
 /** Share of the signal that what happens between samples may be off by, once it is no longer followed. */
 const ripple = 1e-7
 const pieceAngle = 1
+const longestStride = 2 ** 30
+/** Straight pieces from sample to sample before they become twice as long: what swings for longer than that is known by its envelope. */
+const straightPieces = 2000
 const last = nodesPerPiece - 1
 
 /** Seconds until a root is gone. */
@@ -28,7 +31,8 @@ export function quickLifeOf(root: Complex, period: number): number {
 }
 
 /**
- * The end of a sampled response, when only roots move that are slow against the period: values at every 2^n-th sample, ever further apart as roots die out.
+ * The end of a sampled response, when only roots move that are slow against the period: values at every 2^n-th sample, ever further apart as roots die out. Where a
+ * quick root lives on (all but undamped), straight pieces from sample to sample, later ever further apart, so that no loop, however strange, takes long.
  * @param driven what one period adds to the state at rest under the input
  * @param state at `from`
  */
@@ -43,21 +47,33 @@ export function followCoarsely(
   let away: Float64Array = state.map((entry, i) => entry - rest[i]!)
   let stride = 1
   let power = matrix
+  const lengthen = () => {
+    power = squared(power, size)
+    stride *= 2
+  }
+  const at = (row: Float64Array, node: Float64Array) => row.reduce((sum, weight, i) => sum + weight * node[i]!, 0)
+  let straight = 0
   for (let t = from; t < until;) {
     const fastest = poles.reduce((most, { re, im }) => t * -re < gone ? Math.max(most, Math.hypot(re, im)) : most, 0)
-    while (2 * stride * last * period * fastest <= pieceAngle && stride < 2 ** 30) {
-      power = squared(power, size)
-      stride *= 2
-    }
+    while (2 * stride * last * period * fastest <= pieceAngle && stride < longestStride) lengthen()
+    const bent = stride * last * period * fastest <= pieceAngle
+    if (!bent && ++straight % straightPieces === 0 && stride < longestStride) lengthen()
     const nodes = [away]
-    for (let i = 0; i < last; i++) nodes.push(applyMatrix(power, nodes[i]!))
-    const values = (row: Float64Array, offset: number) => Float64Array.from(nodes, node => row.reduce((sum, weight, i) => sum + weight * node[i]!, offset))
-    const length = last * stride * period
+    for (let i = 0; i < (bent ? last : 1); i++) nodes.push(applyMatrix(power, nodes[i]!))
+    const length = (bent ? last : 1) * stride * period
+    const values = (row: Float64Array, level: number) => bent
+      ? Float64Array.from(nodes, node => level + at(row, node))
+      : between(level + at(row, away), level + at(row, nodes[1]!))
     signals.output.add(t, length, values(map.output, output))
     signals.effort.add(t, length, values(map.effort, effort))
-    away = nodes[last]!
+    away = nodes[nodes.length - 1]!
     t += length
   }
+}
+
+/** A straight piece from one value to another. */
+function between(a: number, b: number): Float64Array {
+  return Float64Array.from({ length: nodesPerPiece }, (_, node) => a + (b - a) * node / last)
 }
 
 function squared(a: Float64Array, n: number): Float64Array {

@@ -11,6 +11,8 @@ import { periodMap } from './period-map'
 import type { SampledController } from './sampled-controller'
 import { control, flat, heldValues, linearPeriod, pushed, readAt, restingState, type SampledState } from './sampled-step'
 
+/** Pieces that are followed between the samples too, after the start and after the limit was left. */
+const finePieces = 8000
 /** A loop that its limit does not let come to rest is given up after so many lives of its slowest root. */
 const mostLives = 8
 
@@ -97,11 +99,13 @@ export function sampledResponse(run: SampledRun, remains: { output: number[], ef
   const life = Math.max(0, ...poles.map(lifeOf))
   // A ramp never comes to rest: it is followed sample by sample for as long as it moves.
   const coarse = run.input !== 'reference-ramp'
-  const quick = (coarse ? Math.max(0, ...poles.map(pole => quickLifeOf(pole, run.period))) : life) + 20 * run.period
+  const wanted = (coarse ? Math.max(0, ...poles.map(pole => quickLifeOf(pole, run.period))) : life) + 20 * run.period
+  const most = Math.max(20, Math.floor(finePieces / (run.held.older.length + run.held.newer.length))) * run.period
+  const quick = Math.min(wanted, most)
   simulation.extendTo(quick)
   const reachable = !coarse || Math.abs(remains.effort[0]!) < run.limit
-  const most = mostLives * (life + quick)
-  while (reachable && !simulation.exhausted && simulation.time < Math.min(most, simulation.limitedUntil + quick)) simulation.extendTo(simulation.limitedUntil + quick)
+  const longest = mostLives * (life + quick)
+  while (reachable && !simulation.exhausted && simulation.time < Math.min(longest, simulation.limitedUntil + quick)) simulation.extendTo(simulation.limitedUntil + quick)
   const settled = reachable && simulation.time >= simulation.limitedUntil + quick
   if (simulation.exhausted) refuseMoreWork('loop.samplePeriod')
   if (settled && coarse) simulation.finish(poles, simulation.limitedUntil + life)

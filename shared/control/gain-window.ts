@@ -3,6 +3,8 @@ import { openLoop } from './controller'
 import { NoAnswerError, TooMuchWorkError } from './errors'
 import { imaginaryAxisCrossings } from './locus/crossings'
 import { readAll, type ReadingOptions } from './readings'
+import type { LoopResponse } from './response/response'
+import { refuseMoreWork } from './response/work'
 import { scaleGains } from './scale-gains'
 import type { Controller, Gains, GainWindow, Interval, LoopModel, ReadingName, Requirement } from './types'
 import { judge } from './verdicts'
@@ -13,8 +15,9 @@ const domain: Interval = [1e-3, 1e3]
 const perDecade = 8
 /** Edges are found to this, relative. */
 const edgeAccuracy = 1e-6
-/** Pieces of responses followed step by step that all samples may take together. */
-const mostPieces = 150_000
+/** Pieces of responses followed step by step that all samples may take together, and each of them. */
+const mostPieces = 250_000
+const piecesPerSample = 2500
 /** Levels of halving where a reading comes near its limit between samples and turns back. */
 const deepest = 6
 
@@ -33,8 +36,14 @@ interface Sample {
  * @param gains the present ones; all are multiplied (zero and pole of a lead or lag stay)
  */
 export function gainWindow(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], options: ReadingOptions = { amplitude: 1, settlingBandPercent: 2 }): GainWindow {
-  const work = { pieces: mostPieces }
-  const sampleAt = (x: number): Sample => ({ x, room: roomAt(() => closeLoop(model, controller, scaleGains(gains, Math.exp(x)), work), requirements, options) })
+  const left = { pieces: mostPieces }
+  const sampleAt = (x: number): Sample => {
+    if (left.pieces <= 0) refuseMoreWork()
+    const work = { pieces: piecesPerSample }
+    const room = roomAt(() => closeLoop(model, controller, scaleGains(gains, Math.exp(x)), work), requirements, options)
+    left.pieces -= piecesPerSample - work.pieces
+    return { x, room }
+  }
   const samples = refineTurns(firstPlaces(model, controller, gains).map(sampleAt), sampleAt)
   const byRequirement = requirements.map((requirement, index) => ({ ...requirement, intervals: intervalsOf(samples, index, sampleAt) }))
   const window = byRequirement.reduce<Interval[]>((common, { intervals }) => intersect(common, intervals), [domain])
@@ -44,16 +53,26 @@ export function gainWindow(model: LoopModel, controller: Controller, gains: Gain
 function roomAt(close: () => ClosedLoop, requirements: readonly Requirement[], options: ReadingOptions): number[] {
   try {
     const closed = close()
-    const readings = readAll(closed, closed.respondTo('reference-step', options.amplitude), options)
+    const readings = readAll(closed, stepOf(closed, options.amplitude), options)
     return judge(requirements, readings, closed.poles, closed.stable).map(({ actual, limit, value, met }) => {
       const room = actual === null ? Infinity : Math.abs(limit === 'at-most' ? value - actual : actual - value)
       return met ? room : -room
     })
   }
   catch (error) {
-    if (error instanceof TooMuchWorkError) throw error
     // An algebraic loop, or numbers out of range: nothing is met there.
     if (error instanceof NoAnswerError || error instanceof RangeError) return requirements.map(() => -Infinity)
+    throw error
+  }
+}
+
+/** null where following it to its end would take too long: it then meets nothing that limits it in time, which errs on the safe side. */
+function stepOf(closed: ClosedLoop, amplitude: number): LoopResponse | null {
+  try {
+    return closed.stable ? closed.respondTo('reference-step', amplitude) : null
+  }
+  catch (error) {
+    if (error instanceof TooMuchWorkError) return null
     throw error
   }
 }

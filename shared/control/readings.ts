@@ -13,11 +13,11 @@ export interface ReadingOptions {
 /**
  * Every reading of the closed loop, by the definitions of `Readings`' fields; null where a figure does not exist. In an unstable loop the figures of
  * the response and the bandwidth do not, while margins and sensitivity peak, which are figures of the loop transfer, do.
- * @param step output and effort after a unit reference step
+ * @param step output and effort after a unit reference step; null where it could not be followed, and its figures do not exist
  */
-export function readAll(closed: ClosedLoop, step: LoopResponse, options: ReadingOptions): Readings {
+export function readAll(closed: ClosedLoop, step: LoopResponse | null, options: ReadingOptions): Readings {
   const ofLoop = closed.frequencyFigures()
-  if (!closed.stable) {
+  if (!closed.stable || step === null) {
     return finiteOrNull({
       finalValue: null, overshootPercent: null, peakTime: null, riseTime: null, settlingTime: null,
       steadyStateErrorStep: null, steadyStateErrorRamp: null, peakEffort: null, ...ofLoop,

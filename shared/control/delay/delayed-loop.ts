@@ -1,6 +1,8 @@
 import { abs } from '../../numerics/complex'
+import { roots } from '../../numerics/roots'
 import type { ClosedLoop } from '../closed-loop'
 import type { LoopFunctions } from '../controller'
+import { NoAnswerError } from '../errors'
 import { figuresAlongGrid } from '../frequency/along-grid'
 import type { Work } from '../response/work'
 import { delayedFrequency } from './delayed-frequency'
@@ -11,6 +13,7 @@ import { delayedStationaryError } from './limits-at-rest'
 /** A loop with dead time: roots of the quasi-polynomial, responses by true delay, margins bracketed on the imaginary axis. */
 export function delayedLoop(functions: LoopFunctions, work: Work): ClosedLoop {
   const { loop, deadTime } = functions
+  refuseEndlessDelay(functions)
   const found = delayedRoots({ ...loop, deadTime })
   const stable = delayedStable(found)
   const { poles } = found
@@ -23,6 +26,16 @@ export function delayedLoop(functions: LoopFunctions, work: Work): ClosedLoop {
     frequencyFigures: () => figuresAlongGrid(pointwise(), stable),
     stationaryError: integrators => delayedStationaryError(functions, integrators),
     respondTo: input => delayedResponse(functions, input, poles, stable, actingSpeed(functions, poles), work),
+  }
+}
+
+/** Dead time in time constants of the slowest root of the open loop up to which there is a loop worth computing. */
+const longest = 1e4
+
+function refuseEndlessDelay({ loop, deadTime }: LoopFunctions): void {
+  const sizes = roots(loop.denominator).map(abs).filter(size => size > 0)
+  if (sizes.length > 0 && Math.min(...sizes) * deadTime > longest) {
+    throw new NoAnswerError('the dead time is so long against the rest of the loop that nothing else in it can be told', 'loop.deadTime')
   }
 }
 

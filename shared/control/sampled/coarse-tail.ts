@@ -3,6 +3,7 @@ import { solveLinear } from '../../numerics/linear'
 import { applyMatrix } from '../../numerics/matrix-exponential'
 import type { PiecewiseSignal } from '../response/piecewise'
 import { nodesPerPiece } from '../response/step-propagator'
+import { refuseMoreWork, type Work } from '../response/work'
 import type { PeriodMap } from './period-map'
 
 /** A root is gone once it has decayed by this power of e. */
@@ -37,7 +38,7 @@ export function quickLifeOf(root: Complex, period: number): number {
  * @param state at `from`
  */
 export function followCoarsely(
-  { map, driven, period, poles }: { map: PeriodMap, driven: Float64Array, period: number, poles: readonly Complex[] },
+  { map, driven, period, poles, work }: { map: PeriodMap, driven: Float64Array, period: number, poles: readonly Complex[], work: Work },
   signals: { output: PiecewiseSignal, effort: PiecewiseSignal }, state: Float64Array, from: number, until: number,
 ): void {
   const { size, matrix } = map
@@ -54,6 +55,7 @@ export function followCoarsely(
   const at = (row: Float64Array, node: Float64Array) => row.reduce((sum, weight, i) => sum + weight * node[i]!, 0)
   let straight = 0
   for (let t = from; t < until;) {
+    if (--work.pieces < 0) refuseMoreWork('loop.samplePeriod')
     const fastest = poles.reduce((most, { re, im }) => t * -re < gone ? Math.max(most, Math.hypot(re, im)) : most, 0)
     while (2 * stride * last * period * fastest <= pieceAngle && stride < longestStride) lengthen()
     const bent = stride * last * period * fastest <= pieceAngle

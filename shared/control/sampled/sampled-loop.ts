@@ -1,6 +1,9 @@
+import { abs } from '../../numerics/complex'
+import { roots } from '../../numerics/roots'
 import type { ClosedLoop } from '../closed-loop'
 import type { LoopFunctions } from '../controller'
 import { delayedRemains, delayedStationaryError } from '../delay/limits-at-rest'
+import { NoAnswerError } from '../errors'
 import { figuresAlongGrid } from '../frequency/along-grid'
 import type { Controller, Gains, LoopModel, Sampling } from '../types'
 import type { Work } from '../response/work'
@@ -17,6 +20,7 @@ import { sampledRoots } from './sampled-roots'
  */
 export function sampledLoop(model: LoopModel, controller: Controller, gains: Gains, functions: LoopFunctions, sampling: Sampling, work: Work): ClosedLoop {
   const { period } = sampling
+  refuseNeedlessSampling(functions, period)
   const held = heldPlant(model, sampling)
   const law = sampledController(controller, gains, period)
   const { poles, stable } = sampledRoots(held, law, period)
@@ -33,5 +37,15 @@ export function sampledLoop(model: LoopModel, controller: Controller, gains: Gai
       const limit = model.actuatorLimit === undefined ? Infinity : model.actuatorLimit / Math.abs(amplitude)
       return sampledResponse({ held, controller: law, period, input, limit, work }, stable ? delayedRemains(functions, input) : null, poles)
     },
+  }
+}
+
+/** Rounding would have more to say than the sampling where all that moves is this slow against the period. */
+const needless = 1e-6
+
+function refuseNeedlessSampling({ characteristic }: LoopFunctions, period: number): void {
+  const fastest = Math.max(0, ...roots(characteristic).map(abs))
+  if (fastest > 0 && fastest * period < needless) {
+    throw new NoAnswerError('the sample period is so short against the loop that sampling makes no difference: leave it out', 'loop.samplePeriod')
   }
 }

@@ -58,7 +58,7 @@ class SampledSimulation {
     const { held, controller, period, input } = this.run
     const inputs = { reference: input === 'reference-step' ? 1 : 0, disturbance: input === 'disturbance-step' ? 1 : 0 }
     const driven = flat(linearPeriod(held, controller, restingState(held, controller), inputs).next)
-    followCoarsely({ map: periodMap(held, controller), driven, period, poles }, this, flat(this.state), this.time, until)
+    followCoarsely({ map: periodMap(held, controller), driven, period, poles, work: this.run.work }, this, flat(this.state), this.time, until)
   }
 
   private followPeriod(): void {
@@ -100,7 +100,7 @@ export function sampledResponse(run: SampledRun, remains: { output: number[], ef
   // A ramp never comes to rest: it is followed sample by sample for as long as it moves.
   const coarse = run.input !== 'reference-ramp'
   const wanted = (coarse ? Math.max(0, ...poles.map(pole => quickLifeOf(pole, run.period))) : life) + 20 * run.period
-  const most = Math.max(20, Math.floor(finePieces / (run.held.older.length + run.held.newer.length))) * run.period
+  const most = Math.max(20, Math.floor(Math.min(finePieces, run.work.pieces / 2) / (run.held.older.length + run.held.newer.length))) * run.period
   const quick = Math.min(wanted, most)
   simulation.extendTo(quick)
   const reachable = !coarse || Math.abs(remains.effort[0]!) < run.limit

@@ -135,7 +135,8 @@ describe('a sampled loop', () => {
     expect(solution.readings.overshootPercent!).toBeGreaterThan(solution.continuous!.readings.overshootPercent! + 1)
     expect(solution.closedLoopPoles[0]!.re).toBeGreaterThan(-0.5)
     expect(() => solveDesign(sampled(servo, 0.001, { deadTime: 1 }), gainForm, { gains: { k: 0.2 } })).toThrow(/sample periods/)
-    expect(solveDesign(sampled(servo, 1e-7), gainForm, { gains: { k: 0.5 } }).readings.overshootPercent!).toBeCloseTo(100 * Math.exp(-Math.PI), 4)
+    expect(solveDesign(sampled(servo, 1e-5), gainForm, { gains: { k: 0.5 } }).readings.overshootPercent!).toBeCloseTo(100 * Math.exp(-Math.PI), 3)
+    expect(() => solveDesign(sampled(servo, 1e-8), gainForm, { gains: { k: 0.5 } })).toThrow(/leave it out/)
   })
 })
 

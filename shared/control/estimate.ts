@@ -11,15 +11,16 @@ export const worthSaying = { points: 1, percent: 5 }
  * overshoot 100 exp(-pi zeta/sqrt(1 - zeta^2)) percent, peak time pi/wd, settling time 4/(zeta wn) (2 %), and the 10 to 90 % rise time of
  * the standard second-order system, solved and not fitted (the usual straight-line fits are off by up to 6 %).
  *
- * zeta = 1: no overshoot, no peak. zeta = 0: it never settles. zeta < 0 or s = 0: all null, such a pair has no step figures.
+ * zeta = 1, or so near to it that the overshoot is no number above 0: no peak. zeta = 0: it never settles. zeta < 0 or s = 0: all null, such a pair has no step figures.
  * Source: K. Ogata, "Modern Control Engineering"; N. S. Nise, "Control Systems Engineering", sections on second-order systems.
  */
 export function estimateAt(designPoint: Complex): DesignSolution['estimate'] {
   const { dampingRatio, naturalFrequency } = describePoint(designPoint)
   if (dampingRatio < 0 || naturalFrequency === 0) return { overshootPercent: null, peakTime: null, settlingTime: null, riseTime: null }
+  const overshootPercent = overshootFromDamping(dampingRatio)
   return {
-    overshootPercent: overshootFromDamping(dampingRatio),
-    peakTime: designPoint.im > 0 ? Math.PI / designPoint.im : null,
+    overshootPercent,
+    peakTime: overshootPercent > 0 ? Math.PI / designPoint.im : null,
     settlingTime: dampingRatio > 0 ? 4 / (dampingRatio * naturalFrequency) : null,
     riseTime: normalisedRiseTime(dampingRatio) / naturalFrequency,
   }

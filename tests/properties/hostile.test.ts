@@ -61,7 +61,7 @@ describe('hostile numbers', () => {
   })
 
   it('leave the locus and the gain window with an answer or a reason', () => {
-    holds(33, 60, [fc.oneof(wildCoefficients, wildPlaces, heaped)], (plant) => {
+    holds(33, 30, [fc.oneof(wildCoefficients, wildPlaces, heaped)], (plant) => {
       const model: LoopModel = { plant, rateFeedback: 0 }
       for (const work of [
         () => analyzeLoop(model, { form: 'gain' }, { dampingRatio: 0.5 }),

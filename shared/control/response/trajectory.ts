@@ -6,6 +6,12 @@ import { findRoot } from '../../numerics/find-root'
  */
 export const instantsPerLength = 2000
 
+/**
+ * Extrema that one search refines. A walk that resolves its signal meets fewer of them; once its steps have grown too long for that, nearly each of them
+ * seems to hide one, and refining it tells no more than the instants do.
+ */
+const mostTurnings = 400
+
 /** One instant of a walk along a transient. */
 export interface Instant {
   time: number
@@ -58,9 +64,10 @@ export function highest(y: Trajectory, sign: 1 | -1, floor: number): Extremum | 
   let a = y.instant(0)
   if (a === null) return null
   let best = { time: 0, value: Math.max(sign * a.value, floor) }
+  let turnings = 0
   for (let k = 1; a !== null && a.envelope > best.value; k++) {
     const b = y.instant(k)
-    if (b !== null && sign * a.slope > 0 && sign * b.slope <= 0 && sign * (a.value + a.slope * (b.time - a.time)) > best.value) {
+    if (b !== null && sign * a.slope > 0 && sign * b.slope <= 0 && sign * (a.value + a.slope * (b.time - a.time)) > best.value && turnings++ < mostTurnings) {
       const time = turning(y, a, b)
       const value = sign * y.transient(time)
       if (value > best.value) best = { time, value }
@@ -95,10 +102,11 @@ export function largestSize(y: Trajectory): number {
   const final = y.remains[0] ?? 0
   let a = y.instant(0)
   let best = Math.max(Math.abs(final), Math.abs(final + (a?.value ?? 0)))
+  let turnings = 0
   for (let k = 1; a !== null && a.envelope + Math.abs(final) > best * (1 + 1e-12); k++) {
     const b = y.instant(k)
     if (b === null) break
-    if (a.slope * b.slope < 0 && Math.abs(final + a.value + a.slope * (b.time - a.time)) > best) {
+    if (a.slope * b.slope < 0 && Math.abs(final + a.value + a.slope * (b.time - a.time)) > best && turnings++ < mostTurnings) {
       best = Math.max(best, Math.abs(final + y.transient(turning(y, a, b))))
     }
     best = Math.max(best, Math.abs(final + b.value))
@@ -113,11 +121,12 @@ export function lastOutside(y: Trajectory, band: number): number {
   let valueB = y.transient(b)
   let slopeB = y.slope(b)
   const excess = (t: number) => Math.abs(y.transient(t)) - band
+  let turnings = 0
   for (let k = 0; b > 0; k++) {
-    const a = Math.max(0, b - (b - y.previous(b)) * 2 ** Math.floor(k / instantsPerLength))
+    const a = Math.max(0, b - (b - y.previous(b)) * stretched(k))
     const valueA = y.transient(a)
     const slopeA = y.slope(a)
-    if (slopeA * slopeB < 0 && Math.max(Math.abs(valueA + slopeA * (b - a)), Math.abs(valueB - slopeB * (b - a))) > band) {
+    if (slopeA * slopeB < 0 && Math.max(Math.abs(valueA + slopeA * (b - a)), Math.abs(valueB - slopeB * (b - a))) > band && turnings++ < mostTurnings) {
       const turn = crossing(t => y.slope(t), a, b)
       if (excess(turn) > 0 && excess(b) <= 0) return crossing(excess, turn, b)
     }
@@ -127,6 +136,11 @@ export function lastOutside(y: Trajectory, band: number): number {
     slopeB = slopeA
   }
   return 0
+}
+
+/** How much longer than resolves the signal the k-th step backwards is: not at all at first, then growing fast, since nothing is seen on the way any more. */
+function stretched(k: number): number {
+  return k < instantsPerLength ? 1 : 2 ** Math.ceil(10 * (k + 1 - instantsPerLength) / instantsPerLength)
 }
 
 function turning(y: Trajectory, a: Instant, b: Instant): number {

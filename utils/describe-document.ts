@@ -3,6 +3,7 @@ import { abs, type Complex } from '#shared/numerics/complex'
 import type { ScenarioDocument } from '#shared/schemas/document'
 import type { Plant } from '#shared/schemas/loop'
 import { requirementWords } from '~/utils/anchor-words'
+import { formatSpan } from '~/utils/bench/actuation-words'
 import { controllerForms } from '~/utils/bench/controller-forms'
 import { formatComplex, formatPlain } from '~/utils/bench/format'
 
@@ -37,6 +38,10 @@ function describe({ title, machine, axis, document }: Described): Record<string,
     'Plant': describePlant(document.loop.plant),
     'Sensor': document.loop.sensor ? describePlant(document.loop.sensor) : 'none',
     'Inner rate feedback': figure(document.loop.rateFeedback ?? 0),
+    'Dead time': document.loop.deadTime ? formatSpan(document.loop.deadTime) : 'none',
+    'Actuator limit': document.loop.actuatorLimit === undefined ? 'none' : figure(document.loop.actuatorLimit),
+    'Sample period': document.loop.samplePeriod === undefined ? 'none, a continuous controller' : formatSpan(document.loop.samplePeriod),
+    'Computing delay': document.loop.computingDelay === 'one-sample' ? 'one sample' : 'none',
     'Controller': describeController(document.controller),
     'Requirements': describeRequirements(document.requirements),
     'Notes': document.notes || 'none',

@@ -54,7 +54,7 @@ describe.each([
     await page.keyboard.press('End')
     await page.locator('[data-test="frequency-reads"]').first().waitFor()
     await look('the bench with the loop over frequency')
-    for (const details of ['steady-state', 'locus-facts', 'cautions']) await page.locator(`[data-test="${details}"] > summary`).click()
+    for (const details of ['steady-state', 'locus-facts', 'cautions', 'actuation']) await page.locator(`[data-test="${details}"] > summary`).click()
     await bench.typeCoefficients({ numerator: '1', denominator: '1 0 0' })
     await bench.chooseController('pid')
     await page.locator('[data-test="gain-choices"]').waitFor()

@@ -1,5 +1,6 @@
 import type { LoopAnalysis } from '#shared/control/types'
 import { distance, type Complex } from '#shared/numerics/complex'
+import { formatPlain } from '~/utils/bench/format'
 
 /** One fact about the locus: what it is, where, at which gain and angle, as far as it has them. */
 export interface LocusFact {
@@ -48,13 +49,29 @@ function withAngles(name: string, places: readonly Complex[], angles: { place: C
  * the gain of L0 is negative.
  */
 export function realAxisSegments({ poles, zeros, numerator, denominator }: LoopAnalysis['openLoop']): [number, number][] {
-  const leading = (p: number[]) => p.find(coefficient => coefficient !== 0) ?? 0
-  const parity = leading(numerator) * Math.sign(leading(denominator)) > 0 ? 1 : 0
+  const parity = isPositive({ numerator, denominator }) ? 1 : 0
   const marks = [...poles, ...zeros].filter(({ im }) => im === 0).map(({ re }) => re).sort((a, b) => b - a)
   const edges = [Infinity, ...marks, -Infinity]
   return edges.slice(1)
     .map((left, i): [number, number] => [left, edges[i]!])
     .filter(([left, right], i) => i % 2 === parity && !isOnePlace(left, right))
+}
+
+/** Whether the gain of L0, ratio of its leading coefficients, is positive. */
+function isPositive({ numerator, denominator }: Pick<LoopAnalysis['openLoop'], 'numerator' | 'denominator'>): boolean {
+  const leading = (p: number[]) => p.find(coefficient => coefficient !== 0) ?? 0
+  return leading(numerator) * Math.sign(leading(denominator)) > 0
+}
+
+/**
+ * What a dead time T makes of the locus, null without one: far to the right L0 e^(-sT) has the angle -wT, so that the branches end along
+ * w = (2k + 1) pi/T, or 2k pi/T where the gain of L0 is negative.
+ */
+export function deadTimeNote(open: LoopAnalysis['openLoop']): string | null {
+  if (open.deadTime === 0) return null
+  const multiples = isPositive(open) ? 'odd' : 'even'
+  return `With the dead time there are no asymptotes: branches go out to the right along horizontals at the ${multiples} multiples of π/T = `
+    + `${formatPlain(Math.PI / open.deadTime, 4)} rad/s. Crossings go on for ever; the nearest are told.`
 }
 
 function isOnePlace(left: number, right: number): boolean {

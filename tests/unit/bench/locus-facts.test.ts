@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { locusFacts, locusFactsText, realAxisSegments } from '~/utils/bench/locus-facts'
+import { deadTimeNote, locusFacts, locusFactsText, realAxisSegments } from '~/utils/bench/locus-facts'
 import { analyzeLoop } from '#shared/control/analyze'
 import type { LoopAnalysis } from '#shared/control/types'
 import { loopOf, real } from '../../helpers/loops'
@@ -48,6 +48,16 @@ describe('the facts of a locus', () => {
 
   it('say when no gain is stable', () => {
     expect(locusFacts(analysis({ stableGain: [] })).at(-1)).toEqual({ name: 'No stable gain' })
+  })
+})
+
+describe('a dead time', () => {
+  it('has horizontals in place of asymptotes, at other multiples where the gain of L0 is negative', () => {
+    expect(deadTimeNote(analysis({}).openLoop)).toBeNull()
+    for (const [gain, multiples] of [[1, 'odd'], [-1, 'even']] as const) {
+      const delayed = analyzeLoop({ ...loopOf([gain], [1, 1]), deadTime: 0.5 }, { form: 'gain' })
+      expect(deadTimeNote(delayed.openLoop)).toContain(`at the ${multiples} multiples of π/T = 6.283 rad/s`)
+    }
   })
 })
 

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { actuationSummary, formatSpan } from '~/utils/bench/actuation-words'
 import { areGainsOf, controllerForms, offeredForms } from '~/utils/bench/controller-forms'
 import { demoScenario } from '~/utils/bench/demo-scenario'
 import { estimateDifference } from '~/utils/bench/estimate-difference'
@@ -67,7 +68,22 @@ describe('sentences of the bench', () => {
     expect(negativeGainSentence({ k: 3, zero: -1, pole: -10 })).toBeNull()
   })
 
+  it('writes spans of time in the unit in which they are spoken of', () => {
+    expect([1.5, 1, 0.99999, 0.002, 0.0000505, 2e-7, 86400].map(formatSpan).map(text => text.replace('\u00A0', ' ')))
+      .toEqual(['1.5 s', '1 s', '1 s', '2 ms', '50.5 µs', '2e\u22127 s', '86400 s'])
+  })
+
+  it('tells in few words what stands between controller and plant', () => {
+    const plant = { form: 'coefficients' as const, numerator: [1], denominator: [1, 0] }
+    expect(actuationSummary({ plant })).toBeNull()
+    expect(actuationSummary({ plant, deadTime: 0 })).toBeNull()
+    expect(actuationSummary({ plant, deadTime: 0.002, actuatorLimit: 5, samplePeriod: 0.001 })).toBe('dead time 2\u00A0ms, limit 5, every 1\u00A0ms')
+    expect(actuationSummary({ plant, samplePeriod: 0.5, computingDelay: 'one-sample' })).toBe('every 500\u00A0ms, output one sample later')
+  })
+
   it('names fields as the bench does', () => {
+    expect(['deadTime', 'actuatorLimit', 'samplePeriod', 'computingDelay'].map(field => sayField(`loop.${field}`)))
+      .toEqual(['Dead time', 'Actuator limit', 'Sample period', 'Computing delay'])
     expect(sayField('loop.plant.parameters.J.value')).toBe('Parameter J')
     expect(sayField('requirements.2.value')).toBe('Requirement 3')
     expect(sayField('loop.plant.denominator.0')).toBe('Denominator')
@@ -113,6 +129,22 @@ describe('two versions of a scenario', () => {
         theirs: 'overshoot at most 12\u00A0%; settling time at most 7\u00A0s',
       },
     ])
+  })
+})
+
+describe('two versions of a loop', () => {
+  it('differ in what stands between controller and plant', () => {
+    const { title, machine, axis, document } = demoScenario
+    const mine = { title, machine, axis, document }
+    const loop = { ...document.loop, deadTime: 0.002, actuatorLimit: 5, samplePeriod: 0.001, computingDelay: 'one-sample' as const }
+    expect(differences(mine, { ...mine, document: { ...document, loop } })).toEqual([
+      { what: 'Dead time', mine: 'none', theirs: '2\u00A0ms' },
+      { what: 'Actuator limit', mine: 'none', theirs: '5' },
+      { what: 'Sample period', mine: 'none, a continuous controller', theirs: '1\u00A0ms' },
+      { what: 'Computing delay', mine: 'none', theirs: 'one sample' },
+    ])
+    // A dead time of 0 is none.
+    expect(differences(mine, { ...mine, document: { ...document, loop: { ...document.loop, deadTime: 0 } } })).toEqual([])
   })
 })
 

@@ -19,6 +19,11 @@ export class PiecewiseSignal {
     this.values.push(values)
   }
 
+  /** Takes the pieces of another signal that follows on this one. */
+  append(other: PiecewiseSignal): void {
+    other.values.forEach((values, i) => this.add(other.starts[i]!, other.lengths[i]!, values))
+  }
+
   get end(): number {
     const i = this.starts.length - 1
     return i < 0 ? 0 : this.starts[i]! + this.lengths[i]!

@@ -53,12 +53,17 @@ class SampledSimulation {
     while (this.time < t && !this.exhausted) this.followPeriod()
   }
 
-  /** Follows the rest, in which only slow roots move, in longer strides. */
-  finish(poles: readonly Complex[], until: number): void {
-    const { held, controller, period, input } = this.run
+  /** Follows the rest, in which only slow roots move, in longer strides; false, with nothing done, where it would pass the limit. */
+  finish(poles: readonly Complex[], until: number): boolean {
+    const { held, controller, period, input, limit } = this.run
     const inputs = { reference: input === 'reference-step' ? 1 : 0, disturbance: input === 'disturbance-step' ? 1 : 0 }
     const driven = flat(linearPeriod(held, controller, restingState(held, controller), inputs).next)
-    followCoarsely({ map: periodMap(held, controller), driven, period, poles, work: this.run.work }, this, flat(this.state), this.time, until)
+    const rest = { output: new PiecewiseSignal(), effort: new PiecewiseSignal() }
+    followCoarsely({ map: periodMap(held, controller), driven, period, poles, work: this.run.work }, rest, flat(this.state), this.time, until)
+    if (rest.effort.values.some(values => values.some(value => Math.abs(value) > limit * (1 + 1e-9)))) return false
+    this.output.append(rest.output)
+    this.effort.append(rest.effort)
+    return true
   }
 
   private followPeriod(): void {
@@ -106,9 +111,15 @@ export function sampledResponse(run: SampledRun, remains: { output: number[], ef
   const reachable = !coarse || Math.abs(remains.effort[0]!) < run.limit
   const longest = mostLives * (life + quick)
   while (reachable && !simulation.exhausted && simulation.time < Math.min(longest, simulation.limitedUntil + quick)) simulation.extendTo(simulation.limitedUntil + quick)
-  const settled = reachable && simulation.time >= simulation.limitedUntil + quick
+  let settled = reachable && simulation.time >= simulation.limitedUntil + quick
   if (simulation.exhausted) refuseMoreWork('loop.samplePeriod')
-  if (settled && coarse) simulation.finish(poles, simulation.limitedUntil + life)
+  // Where the slow roots would swing into the limit once more, nothing but following them tells what comes of it.
+  if (settled && coarse && !simulation.finish(poles, simulation.limitedUntil + life)) {
+    do simulation.extendTo(simulation.limitedUntil + life)
+    while (!simulation.exhausted && simulation.time < Math.min(longest, simulation.limitedUntil + life))
+    if (simulation.exhausted) refuseMoreWork('loop.samplePeriod')
+    settled = simulation.time >= simulation.limitedUntil + life
+  }
   return {
     output: trajectoryOf(simulation.output, { remains: remains.output, decays: settled }),
     effort: trajectoryOf(simulation.effort, { remains: remains.effort, decays: settled }),

@@ -121,3 +121,21 @@ function integrate({ plant, deadTime = 0, actuatorLimit: limit = Infinity }: Loo
   }
   return witness
 }
+
+describe('a sampled loop with a limit', () => {
+  it('never puts out more, though its slow roots swing into the limit again and again', () => {
+    const random = seededRandom(17)
+    let limited = 0
+    for (let round = 0; round < 60; round++) {
+      const plant = { numerator: [8], denominator: [8e-5, 0.0212, 0.1 + 0.3 * random(), 0] }
+      const actuatorLimit = 0.02 + 0.4 * random()
+      const model: LoopModel = { plant, rateFeedback: 0, actuatorLimit, sampling: { period: 0.002 + 0.03 * random(), computingDelay: random() < 0.5 } }
+      const { response, readings, stable } = solveDesign(model, gainForm, { gains: { k: 0.1 + random() } })
+      expect(Math.max(...response.effort.map(Math.abs))).toBeLessThanOrEqual(actuatorLimit * (1 + 1e-9))
+      if (!stable || readings.peakEffort === null) continue
+      expect(readings.peakEffort).toBeLessThanOrEqual(actuatorLimit * (1 + 1e-9))
+      limited += Number(response.limitedUntil! > 0)
+    }
+    expect(limited).toBeGreaterThan(15)
+  })
+})

@@ -30,7 +30,7 @@ describe('POST /api/design/solve', () => {
     expect(answer.body.onLocus).toBe(true)
     expect(Object.keys(answer.body).sort()).toEqual([
       'alternatives', 'closedLoopPoles', 'closedLoopZeros', 'designPoint', 'dominance', 'estimate', 'gainUnits', 'gains', 'leftoverAngleDeg', 'onLocus',
-      'readings', 'response', 'stable', 'steadyState', 'unmet', 'verdicts',
+      'readings', 'response', 'stable', 'steadyState', 'uncertain', 'unmet', 'verdicts',
     ])
     expect(Object.keys(answer.body.dominance!).sort()).toEqual(['nearestZeroDistance', 'nextPoleRatio', 'residueShare', 'sentence'])
     expect(Object.keys(answer.body.steadyState).sort()).toEqual(['accelerationConstant', 'errorParabola', 'positionConstant', 'type', 'velocityConstant'])
@@ -77,6 +77,25 @@ describe('POST /api/design/solve', () => {
     expect(answer.status).toBe(400)
   })
 
+  it('answers for a loop with dead time, sampling and a limit, the continuous design beside it', async () => {
+    const solve = async (part: object) => (await client.post<SolveAnswer>('/api/design/solve', { ...good, loop: { ...loop, ...part } })).body
+    const plain = await solve({})
+    const late = await solve({ deadTime: 0.2 })
+    expect(late.leftoverAngleDeg).toBeCloseTo(-0.2 * plain.designPoint.im * 180 / Math.PI, 9)
+    expect(late.readings.phaseMarginDeg).toBeLessThan(plain.readings.phaseMarginDeg!)
+    expect(late.dominance!.sentence).toMatch(/dead time|pair/)
+    const sampled = await solve({ samplePeriod: 0.4, computingDelay: 'one-sample' })
+    expect(sampled.gains).toEqual(plain.gains)
+    expect(sampled.continuous!.readings.overshootPercent).toBeCloseTo(plain.readings.overshootPercent!, 9)
+    expect(sampled.continuous!.response.time).toEqual(sampled.response.time)
+    expect(sampled.readings.overshootPercent).toBeGreaterThan(plain.readings.overshootPercent! + 5)
+    const limited = await solve({ actuatorLimit: 0.5 })
+    expect(limited.readings.peakEffort).toBeCloseTo(0.5, 12)
+    expect(limited.response.limitedUntil).toBeGreaterThan(0)
+    expect(plain.response).not.toHaveProperty('limitedUntil')
+    expect(plain).not.toHaveProperty('continuous')
+  })
+
   it('takes the plant as a formula with named parameters', async () => {
     const plant = { form: 'expression', expression: 'k0/(s·(s+1)·(s+p))', parameters: { k0: { value: 1, unit: 'rad/s' }, p: { value: 2, tolerancePercent: 10 } } }
     const answer = await client.post<DesignSolution>('/api/design/solve', { ...good, loop: { plant } })
@@ -115,6 +134,17 @@ describe('POST /api/loop/analyze', () => {
     expect(body.stableGain).toEqual([[0, expect.closeTo(6, 9)]])
     expect(body.branches).toHaveLength(3)
     expect(body.rayIntersections).toEqual([{ point: { re: expect.closeTo(-1 / 3, 10), im: expect.closeTo(1 / Math.sqrt(3), 10) }, gain: expect.closeTo(28 / 27, 10) }])
+  })
+
+  it('answers with the locus of a loop with dead time: crossings to the border of stability, no asymptotes', async () => {
+    const { body } = await client.post<LoopAnalysis>('/api/loop/analyze', { loop: { plant: { form: 'coefficients', numerator: [1], denominator: [1, 0] }, deadTime: 2 }, controller: { form: 'gain' }, dampingRatio: 0.5 })
+    expect(body.openLoop.deadTime).toBe(2)
+    expect(body.asymptotes).toBeNull()
+    // k e^(-2s)/s: unstable from k = pi/4 on, breakaway at s = -1/2 (K = 1/(2 e)).
+    expect(body.stableGain).toEqual([[0, expect.closeTo(Math.PI / 4, 11)]])
+    expect(body.imaginaryAxisCrossings[0]).toEqual({ frequency: expect.closeTo(Math.PI / 4, 11), gain: expect.closeTo(Math.PI / 4, 11) })
+    expect(body.breakaways).toEqual([{ point: { re: expect.closeTo(-0.5, 11), im: 0 }, gain: expect.closeTo(1 / (2 * Math.E), 11) }])
+    expect(body.branches.length).toBeGreaterThanOrEqual(2)
   })
 
   it('needs the present gains of a form that has several', async () => {

@@ -64,6 +64,11 @@ export async function limit(event: H3Event, name: keyof typeof limiters, key = c
 /** Guard for computing: how often, and for how much time of the server. */
 export async function limitCompute(event: H3Event) {
   await limit(event, 'compute')
+  await limitComputingTime(event)
+}
+
+/** Guard: 429 once the caller's computing time is used up; for work in stretches, before each of them. */
+export async function limitComputingTime(event: H3Event) {
   if (isOff()) return
   const spent = await limiters.computingTime.get(callerAddress(event))
   if (spent === null || spent.remainingPoints > 0) return

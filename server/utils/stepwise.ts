@@ -1,5 +1,5 @@
 import type { H3Event } from 'h3'
-import { compute } from './limits'
+import { compute, limitComputingTime } from './limits'
 
 /** Milliseconds of one stretch of computing; between two of them other requests are served. */
 const stretchMs = 10
@@ -14,6 +14,7 @@ type Steps<Progress, Result> = Generator<Progress, Result, boolean | undefined>
 export async function* inStretches<Progress, Result>(event: H3Event, steps: Steps<Progress, Result>, mostMs: number): AsyncGenerator<Progress, Result> {
   let spent = 0
   for (;;) {
+    await limitComputingTime(event)
     const started = performance.now()
     const step = await compute(event, () => {
       for (;;) {
@@ -25,5 +26,17 @@ export async function* inStretches<Progress, Result>(event: H3Event, steps: Step
     if (step.done) return step.value
     yield step.value
     await new Promise(resolve => setImmediate(resolve))
+  }
+}
+
+/** What work in stretches comes to; it stops where nobody waits for it any more. */
+export async function resultOf<Result>(event: H3Event, stretches: AsyncGenerator<unknown, Result>): Promise<Result | undefined> {
+  for (;;) {
+    const step = await stretches.next()
+    if (step.done) return step.value
+    if (event.node.res.destroyed) {
+      await stretches.return(undefined as never)
+      return undefined
+    }
   }
 }

@@ -2,6 +2,7 @@ import type { Complex } from '../numerics/complex'
 import { roots } from '../numerics/roots'
 import { loopFunctions, type LoopFunctions } from './controller'
 import { delayedLoop } from './delay/delayed-loop'
+import { NoAnswerError } from './errors'
 import type { PointwiseLoop } from './frequency/along-grid'
 import { bandwidth } from './frequency/bandwidth'
 import { margins, type Margins } from './frequency/margins'
@@ -44,6 +45,17 @@ export type FrequencyFigures = Margins & Pick<Readings, 'sensitivityPeak' | 'ban
  * @throws TooMuchWorkError, from its responses, where following them to the end would take more than `work`
  */
 export function closeLoop(model: LoopModel, controller: Controller, gains: Gains, work: Work = fullWork()): ClosedLoop {
+  try {
+    return close(model, controller, gains, work)
+  }
+  catch (error) {
+    // The numerics refuse what overflowed on the way to them.
+    if (error instanceof RangeError) throw new NoAnswerError('the numbers of this loop are too large or too small to compute with: choose units nearer to its size')
+    throw error
+  }
+}
+
+function close(model: LoopModel, controller: Controller, gains: Gains, work: Work): ClosedLoop {
   const functions = loopFunctions(model, controller, gains)
   if (model.sampling !== undefined) return sampledLoop(model, controller, gains, functions, model.sampling, work)
   const loop = functions.deadTime > 0 ? delayedLoop(functions, work) : rationalLoop(functions)

@@ -15,8 +15,7 @@ const domain: Interval = [1e-3, 1e3]
 const perDecade = 8
 /** Edges are found to this, relative. */
 const edgeAccuracy = 1e-6
-/** Pieces of responses followed step by step that all samples may take together, and each of them. */
-const mostPieces = 250_000
+/** Pieces of a response followed step by step that one sample may take. */
 const piecesPerSample = 2500
 /** Levels of halving where a reading comes near its limit between samples and turns back. */
 const deepest = 6
@@ -35,19 +34,42 @@ interface Sample {
  * every edge bisected to 1e-6.
  * @param gains the present ones; all are multiplied (zero and pole of a lead or lag stay)
  */
-export function gainWindow(model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], options: ReadingOptions = { amplitude: 1, settlingBandPercent: 2 }): GainWindow {
-  const left = { pieces: mostPieces }
-  const sampleAt = (x: number): Sample => {
-    if (left.pieces <= 0) refuseMoreWork()
-    const work = { pieces: piecesPerSample }
-    const room = roomAt(() => closeLoop(model, controller, scaleGains(gains, Math.exp(x)), work), requirements, options)
-    left.pieces -= piecesPerSample - work.pieces
-    return { x, room }
+export function gainWindow(...asked: Parameters<typeof gainWindowSteps>): GainWindow {
+  const steps = gainWindowSteps(...asked)
+  for (;;) {
+    const step = steps.next()
+    if (step.done) return step.value
   }
-  const samples = refineTurns(firstPlaces(model, controller, gains).map(sampleAt), sampleAt)
-  const byRequirement = requirements.map((requirement, index) => ({ ...requirement, intervals: intervalsOf(samples, index, sampleAt) }))
+}
+
+/** A part of the work, which pauses before every sample; answered with `true` it gives up. */
+type Steps<Result> = Generator<void, Result, boolean | undefined>
+
+type Sampler = (x: number) => Steps<Sample>
+
+/**
+ * `gainWindow` sample by sample, for a caller who has other things to do in between.
+ * @throws TooMuchWorkError where it was told to give up
+ */
+export function* gainWindowSteps(
+  model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], options: ReadingOptions = { amplitude: 1, settlingBandPercent: 2 },
+): Steps<GainWindow> {
+  const sampleAt: Sampler = function* (x) {
+    if (yield) refuseMoreWork()
+    const work = { pieces: piecesPerSample }
+    return { x, room: roomAt(() => closeLoop(model, controller, scaleGains(gains, Math.exp(x)), work), requirements, options) }
+  }
+  const samples = yield* refineTurns(yield* all(firstPlaces(model, controller, gains), sampleAt), sampleAt)
+  const byRequirement: GainWindow['byRequirement'] = []
+  for (const [index, requirement] of requirements.entries()) byRequirement.push({ ...requirement, intervals: yield* intervalsOf(samples, index, sampleAt) })
   const window = byRequirement.reduce<Interval[]>((common, { intervals }) => intersect(common, intervals), [domain])
   return { window, byRequirement, tightest: tightestOf(window, byRequirement) }
+}
+
+function* all(places: readonly number[], sampleAt: Sampler): Steps<Sample[]> {
+  const samples: Sample[] = []
+  for (const x of places) samples.push(yield* sampleAt(x))
+  return samples
 }
 
 function roomAt(close: () => ClosedLoop, requirements: readonly Requirement[], options: ReadingOptions): number[] {
@@ -101,7 +123,7 @@ function crossingsOf(model: LoopModel, controller: Controller, gains: Gains) {
 }
 
 /** Halves the pieces beside a sample at which some reading is nearer to its limit than at both neighbours, all on one side. */
-function refineTurns(samples: Sample[], sampleAt: (x: number) => Sample): Sample[] {
+function* refineTurns(samples: Sample[], sampleAt: Sampler): Steps<Sample[]> {
   let refined = samples
   for (let level = 0; level < deepest; level++) {
     const halves = new Set<number>()
@@ -112,7 +134,7 @@ function refineTurns(samples: Sample[], sampleAt: (x: number) => Sample): Sample
       halves.add((here.x + after.x) / 2)
     }
     if (halves.size === 0) break
-    refined = [...refined, ...[...halves].map(sampleAt)].sort((a, b) => a.x - b.x)
+    refined = [...refined, ...yield* all([...halves], sampleAt)].sort((a, b) => a.x - b.x)
   }
   return refined
 }
@@ -124,19 +146,18 @@ function turnsNear(before: number, here: number, after: number): boolean {
   return b < a && b < c && b < (a - b) + (c - b)
 }
 
-function intervalsOf(samples: Sample[], index: number, sampleAt: (x: number) => Sample): Interval[] {
+function* intervalsOf(samples: Sample[], index: number, sampleAt: Sampler): Steps<Interval[]> {
   const isMet = ({ room }: Sample) => room[index]! >= 0
-  const edge = (broken: Sample, met: Sample) => Math.exp(edgeBetween(broken, met, index, sampleAt))
   const intervals: Interval[] = []
   let from: number | null = null
-  samples.forEach((sample, i) => {
+  for (const [i, sample] of samples.entries()) {
     const before = samples[i - 1]
-    if (isMet(sample) && from === null) from = before ? edge(before, sample) : domain[0]
+    if (isMet(sample) && from === null) from = before ? Math.exp(yield* edgeBetween(before, sample, index, sampleAt)) : domain[0]
     if (!isMet(sample) && from !== null && before) {
-      intervals.push([from, edge(sample, before)])
+      intervals.push([from, Math.exp(yield* edgeBetween(sample, before, index, sampleAt))])
       from = null
     }
-  })
+  }
   if (from !== null) intervals.push([from, domain[1]])
   return intervals
 }
@@ -145,7 +166,7 @@ function intervalsOf(samples: Sample[], index: number, sampleAt: (x: number) => 
  * The edge between a sample at which the requirement is broken and one at which it is met, on the met side. The secant through the two leads there
  * fast; every third step halves, since a reading may jump (a settling time does, by one swing of the response).
  */
-function edgeBetween(brokenStart: Sample, metStart: Sample, index: number, sampleAt: (x: number) => Sample): number {
+function* edgeBetween(brokenStart: Sample, metStart: Sample, index: number, sampleAt: Sampler): Steps<number> {
   let [broken, met] = [brokenStart, metStart]
   const close = edgeAccuracy / 2
   for (let step = 1; Math.abs(met.x - broken.x) > close; step++) {
@@ -154,7 +175,7 @@ function edgeBetween(brokenStart: Sample, metStart: Sample, index: number, sampl
     const share = step % 3 === 0 || !Number.isFinite(lacking) || !Number.isFinite(spare) ? 0.5 : lacking / (lacking + spare)
     // Never onto an end: a step as short as the accuracy asked for closes the bracket once the secant has arrived.
     const least = 0.45 * close / Math.abs(way)
-    const here = sampleAt(broken.x + way * Math.min(1 - least, Math.max(least, share)))
+    const here = yield* sampleAt(broken.x + way * Math.min(1 - least, Math.max(least, share)))
     if (here.room[index]! >= 0) met = here
     else broken = here
   }

@@ -136,6 +136,28 @@ describe('POST /api/loop/analyze', () => {
     expect(body.rayIntersections).toEqual([{ point: { re: expect.closeTo(-1 / 3, 10), im: expect.closeTo(1 / Math.sqrt(3), 10) }, gain: expect.closeTo(28 / 27, 10) }])
   })
 
+  it('serves others while a costly gain window is computed, and refuses one that costs too much', async () => {
+    const plant = { form: 'zeros-poles-gain', zeros: [], poles: Array.from({ length: 20 }, (_, i) => ({ re: -1 - 0.3 * i, im: 0 })), gain: 1e3 }
+    const sensor = { form: 'zeros-poles-gain', zeros: [], poles: Array.from({ length: 20 }, (_, i) => ({ re: -50 - i, im: 0 })), gain: 1e30 }
+    const costly = client.post<ErrorBody>('/api/design/gain-window', {
+      ...good, loop: { plant, sensor, samplePeriod: 0.01, deadTime: 0.2999, computingDelay: 'one-sample', actuatorLimit: 1 },
+      requirements: [{ reading: 'overshootPercent', limit: 'at-most', value: 10 }, { reading: 'settlingTime', limit: 'at-most', value: 5 }],
+    })
+    let answered = false
+    costly.then(() => { answered = true })
+    await new Promise(resolve => setTimeout(resolve, 50))
+    expect((await client.get('/api/health')).status).toBe(200)
+    expect(answered).toBe(false)
+    const answer = await costly
+    expect([200, 422]).toContain(answer.status)
+  })
+
+  it.each([1e150, 1e300, 1e308])('answers over frequency with numbers or refuses, whatever the sample period: %s s', async (samplePeriod) => {
+    const answer = await client.post<FrequencyResponse>('/api/loop/frequency', { ...good, loop: { ...loop, samplePeriod } })
+    expect([200, 422]).toContain(answer.status)
+    if (answer.status === 200) expect(answer.body.phaseDeg.every(Number.isFinite)).toBe(true)
+  })
+
   it('answers with the locus of a loop with dead time: crossings to the border of stability, no asymptotes', async () => {
     const { body } = await client.post<LoopAnalysis>('/api/loop/analyze', { loop: { plant: { form: 'coefficients', numerator: [1], denominator: [1, 0] }, deadTime: 2 }, controller: { form: 'gain' }, dampingRatio: 0.5 })
     expect(body.openLoop.deadTime).toBe(2)

@@ -7,7 +7,7 @@ import { PiecewiseSignal } from '../response/piecewise'
 import { respond } from '../response/response'
 import { realise, sectionsOf } from '../response/state-space'
 import { nodesPerPiece, StepPropagator } from '../response/step-propagator'
-import type { Work } from '../response/work'
+import { preparationOf, weightOf, type Work } from '../response/work'
 import { polynomialAt, type Trajectory } from '../response/trajectory'
 import { relativeDegree } from '../transfer-function'
 import type { ResponseInput, TransferFunction } from '../types'
@@ -32,6 +32,7 @@ export class DelaySimulation {
   /** What an impulse of size 1 at the plant input adds to the state. */
   private readonly kick: Float64Array
   private readonly disturbed: number
+  private readonly weight: number
   private state: Float64Array
   /** Controller output of the period before, piece by piece. */
   private before: Float64Array[]
@@ -51,7 +52,10 @@ export class DelaySimulation {
     const outputs = [plant, loop].map(g => ({ weights: system.outputOf(g.numerator), direct: relativeDegree(g) === 0 ? leading(g.numerator) / leading(g.denominator) : 0 }))
     const prepared = new Map<number, StepPropagator>()
     const prepare = (always: number) => gridOf(deadTime, poles, always).map((length) => {
-      if (!prepared.has(length)) prepared.set(length, new StepPropagator(system, outputs, length))
+      if (!prepared.has(length)) {
+        work.pieces -= preparationOf(system.input.length)
+        prepared.set(length, new StepPropagator(system, outputs, length))
+      }
       return prepared.get(length)!
     })
     this.smooth = prepare(crossover)
@@ -65,6 +69,7 @@ export class DelaySimulation {
     this.state = new Float64Array(system.input.length)
     this.before = this.grid.map(() => new Float64Array(nodesPerPiece))
     this.kick = system.input
+    this.weight = weightOf(system.input.length)
   }
 
   get time(): number {
@@ -78,7 +83,7 @@ export class DelaySimulation {
 
   /** Whether the next period would be beyond the work that one response may take. */
   get exhausted(): boolean {
-    return this.work.pieces < this.grid.length
+    return this.work.pieces < this.grid.length * this.weight
   }
 
   /** Follows the loop to t or as far as its allowance of work goes. */
@@ -91,7 +96,7 @@ export class DelaySimulation {
     const { grid, disturbed } = this
     if (this.periods === 1 && this.impulse !== 0) this.state = this.state.map((value, i) => value + this.kick[i]! * this.impulse)
     let start = this.time
-    this.work.pieces -= grid.length
+    this.work.pieces -= grid.length * this.weight
     this.before = grid.map((step, piece) => {
       const w = disturbed === 0 ? this.before[piece]! : this.before[piece]!.map(value => value + disturbed)
       const y = step.values(0, this.state, w)

@@ -40,9 +40,15 @@ interface Sample { magnitude: number, phase: number, sensitivity: number, comple
  * A dead time turns the phase by -w T. Of a sampled loop they are those at z = e^(jw period), up to half the sampling rate, its phase followed from point to point.
  *
  * @param options.samples from 2 on; `from` < `to`, both positive
- * @throws NoAnswerError where the gains are zero, so that there is no loop
+ * @throws NoAnswerError where the gains are zero, so that there is no loop, and where numbers leave their range
  */
 export function frequencyResponse(closed: ClosedLoop, options: FrequencyOptions = {}): FrequencyResponse {
+  const found = overFrequency(closed, options)
+  if (Object.values(found).flat().every(figure => figure === null || Number.isFinite(figure))) return found
+  throw new NoAnswerError('the numbers of this loop are too large or too small to draw it over frequency')
+}
+
+function overFrequency(closed: ClosedLoop, options: FrequencyOptions): FrequencyResponse {
   const { functions: { loop, deadTime }, highestFrequency } = closed
   if (polynomial.isZero(loop.numerator)) throw new NoAnswerError('the gains are zero: there is no loop to draw over frequency', 'gains')
   const factored = cancelCommon(factor({ ...loop, deadTime }), cancellationWidth).loop

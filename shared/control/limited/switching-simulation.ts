@@ -7,7 +7,7 @@ import { PiecewiseSignal } from '../response/piecewise'
 import { respond } from '../response/response'
 import { realise, sectionsOf, type StateSpace } from '../response/state-space'
 import { nodesPerPiece, StepPropagator } from '../response/step-propagator'
-import type { Work } from '../response/work'
+import { preparationOf, weightOf, type Work } from '../response/work'
 import { polynomialAt, type Trajectory } from '../response/trajectory'
 import { relativeDegree } from '../transfer-function'
 import type { ResponseInput, TransferFunction } from '../types'
@@ -36,6 +36,7 @@ export class SwitchingSimulation {
   private state: Float64Array
   private readonly free: Trajectory
   private readonly disturbed: number
+  private readonly weight: number
   private readonly direct: number
   private readonly laws: { heard: Law, cut: Law }
   private readonly prepared = new Map<string, StepPropagator>()
@@ -54,6 +55,7 @@ export class SwitchingSimulation {
     this.free = respond(fromReference ? controller : silent, fromReference ? roots(controller.denominator) : [], input === 'reference-ramp' ? 2 : 1)
     this.disturbed = fromReference ? 0 : 1
     this.state = new Float64Array(system.input.length)
+    this.weight = weightOf(system.input.length)
     this.moving = [...poles, ...closedLoopPoles].map(({ re, im }) => ({ speed: Math.hypot(re, im), life: re < 0 ? lifetimes / -re : Infinity }))
     const u = (this.freeAt(0) - this.direct * this.disturbed) / (1 + this.direct)
     this.mode = u > limit ? 1 : u < -limit ? -1 : 0
@@ -72,7 +74,7 @@ export class SwitchingSimulation {
   }
 
   private followPiece(): void {
-    this.work.pieces -= 1
+    this.work.pieces -= this.weight
     const length = this.stepLength()
     const piece = this.piece(length, true)
     const change = this.changeIn(piece.effort)
@@ -118,6 +120,7 @@ export class SwitchingSimulation {
     const known = this.prepared.get(key)
     if (known) return known
     const step = new StepPropagator(law.system, law.outputs, length)
+    this.work.pieces -= preparationOf(law.system.input.length)
     if (keep) this.prepared.set(key, step)
     return step
   }

@@ -9,8 +9,9 @@ import { StepPropagator } from '../response/step-propagator'
 import { relativeDegree, series } from '../transfer-function'
 import type { LoopModel, Sampling, TransferFunction } from '../types'
 
-/** Whole periods of delay that are carried along: each is one more root of the loop. */
+/** Whole periods of delay that are carried along: each is one more root of the loop. And roots of all kinds. */
 const mostPeriods = 60
+const mostRoots = 80
 /** A share of the period that rounding may leave of a whole number of periods. */
 const whole = 1e-9
 
@@ -32,7 +33,7 @@ export interface HeldPlant {
 }
 
 /**
- * @throws NoAnswerError for a dead time of more than 60 periods
+ * @throws NoAnswerError for a dead time of more than 60 periods, or more than what makes 80 roots with those of plant and sensor
  */
 export function heldPlant(model: LoopModel, { period, computingDelay }: Sampling): HeldPlant {
   const plant = effectivePlant(model)
@@ -48,8 +49,8 @@ export function heldPlant(model: LoopModel, { period, computingDelay }: Sampling
   const delay = (model.deadTime ?? 0) / period + (computingDelay ? 1 : 0)
   const periods = Math.floor(delay + whole)
   const fraction = delay - periods <= whole ? 0 : delay - periods
-  if (periods > mostPeriods) {
-    throw new NoAnswerError(`the dead time lasts more than ${mostPeriods} sample periods: too many to compute the sampled loop with`, 'loop.samplePeriod')
+  if (periods > mostPeriods || periods + system.input.length > mostRoots) {
+    throw new NoAnswerError(`the dead time lasts ${periods} sample periods: too many to compute the sampled loop with`, 'loop.samplePeriod')
   }
   const prepared = new Map<number, StepPropagator>()
   const steps = (length: number) => length === 0 ? [] : gridOf(length, poles, 0).map((size) => {

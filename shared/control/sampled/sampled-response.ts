@@ -2,7 +2,7 @@ import type { Complex } from '../../numerics/complex'
 import { PiecewiseSignal, trajectoryOf } from '../response/piecewise'
 import type { LoopResponse } from '../response/response'
 import { nodesPerPiece, type StepPropagator } from '../response/step-propagator'
-import { refuseMoreWork, type Work } from '../response/work'
+import { refuseMoreWork, weightOf, type Work } from '../response/work'
 import type { Trajectory } from '../response/trajectory'
 import type { ResponseInput } from '../types'
 import { followCoarsely, lifeOf, quickLifeOf } from './coarse-tail'
@@ -41,12 +41,18 @@ class SampledSimulation {
     this.state = restingState(run.held, run.controller)
   }
 
+  /** Pieces that a period counts. */
+  private get cost(): number {
+    const { older, newer, order } = this.run.held
+    return (older.length + newer.length) * weightOf(order)
+  }
+
   get time(): number {
     return this.sample * this.run.period
   }
 
   get exhausted(): boolean {
-    return this.run.work.pieces < this.run.held.older.length + this.run.held.newer.length
+    return this.run.work.pieces < this.cost
   }
 
   extendTo(t: number): void {
@@ -68,7 +74,7 @@ class SampledSimulation {
 
   private followPeriod(): void {
     const { held, controller, period, input, limit } = this.run
-    this.run.work.pieces -= held.older.length + held.newer.length
+    this.run.work.pieces -= this.cost
     const { y, m } = readAt(held, this.state)
     const reference = input === 'reference-ramp' ? this.time : input === 'reference-step' ? 1 : 0
     const disturbance = input === 'disturbance-step' ? 1 : 0
@@ -105,7 +111,7 @@ export function sampledResponse(run: SampledRun, remains: { output: number[], ef
   // A ramp never comes to rest: it is followed sample by sample for as long as it moves.
   const coarse = run.input !== 'reference-ramp'
   const wanted = (coarse ? Math.max(0, ...poles.map(pole => quickLifeOf(pole, run.period))) : life) + 20 * run.period
-  const most = Math.max(20, Math.floor(Math.min(finePieces, run.work.pieces / 2) / (run.held.older.length + run.held.newer.length))) * run.period
+  const most = Math.max(20, Math.floor(Math.min(finePieces, run.work.pieces / 2) / (run.held.older.length + run.held.newer.length) / weightOf(run.held.order))) * run.period
   const quick = Math.min(wanted, most)
   simulation.extendTo(quick)
   const reachable = !coarse || Math.abs(remains.effort[0]!) < run.limit

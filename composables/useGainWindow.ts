@@ -24,9 +24,10 @@ export function useGainWindow() {
   async function ask() {
     const { loop, controller, requirements } = bench.document
     const gains = store.solution?.gains
+    asked += 1
     // An answer may lag behind a change of the form: its gains then belong to the form before.
     if (!gains || !areGainsOf(controller.form, gains) || store.stale || requirements.length === 0) return void (room.value = null)
-    const number = ++asked
+    const number = asked
     try {
       const window = await askServer<GainWindow>('/api/design/gain-window', { loop, controller, gains, requirements })
       if (number === asked) room.value = { gains, window }

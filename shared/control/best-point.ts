@@ -25,7 +25,7 @@ export function* bestPoint(model: LoopModel, controller: Controller, target: Des
   const problem = { model, controller, requirements, response }
   const start = startOf(problem, target)
   const room = roomOf(problem, start, over)
-  const search = beginSearch(problem, { over, planned: room.planned, timeScale: 1 / start.naturalFrequency })
+  const search = beginSearch(problem, { over, planned: room.planned, timeScale: 1 / start.naturalFrequency, present: reachesEveryPoint(controller) ? start.trial : null })
   const cutShort = yield* untilEnough(room.searchThrough(search))
   search.finish()
   const binding = search.best() ? yield* room.whatBinds(search) : []
@@ -42,6 +42,11 @@ export function* bestPoint(model: LoopModel, controller: Controller, target: Des
     evaluations: search.evaluations(),
     cutShort,
   }
+}
+
+/** Of the forms with one gain only places on the locus count, and the rooms know those. */
+function reachesEveryPoint({ form }: Controller): boolean {
+  return form !== 'gain' && form !== 'lag'
 }
 
 function* untilEnough(steps: Steps<void>): Steps<BestPoint['cutShort']> {

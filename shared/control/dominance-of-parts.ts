@@ -6,7 +6,7 @@ import { evaluateQuasi } from './delay/quasi-polynomial'
 import { deviation, stepShape, type StepShape } from './deviation-cause'
 import { dominance } from './dominance'
 import { partSentence } from './dominance-sentence'
-import { NoAnswerError, TooMuchWorkError } from './errors'
+import { NoAnswerError } from './errors'
 import { readAll } from './readings'
 import type { Controller, DesignSolution, Gains, LoopModel } from './types'
 
@@ -41,7 +41,7 @@ export function dominanceOfParts(model: LoopModel, controller: Controller, gains
   const plain = rational === null ? null : dominance(
     { poles: rational.poles, zeros, stable: rational.stable, shape: shapeIn(rational, standing.amplitude) }, designPoint, estimate, onLocus && !hasDelay(model))
   if (plain === null || closed.poles.length === 0) return plain
-  return { ...plain, ...placesAbout(closed, designPoint, model.sampling !== undefined), sentence: sentenceOn(model, controller, gains, closed, standing) ?? plain.sentence }
+  return { ...plain, ...placesAbout(closed, zeros, designPoint, model.sampling !== undefined), sentence: sentenceOn(model, controller, gains, closed, standing) ?? plain.sentence }
 }
 
 function sentenceOn(model: LoopModel, controller: Controller, gains: Gains, closed: ClosedLoop, { estimate, shape, amplitude }: Standing): string | null {
@@ -79,14 +79,14 @@ function shapeIn(closed: ClosedLoop, amplitude: number): StepShape | null {
     return stepShape(readAll(closed, step, { amplitude, settlingBandPercent: 2 }), step.output, 2)
   }
   catch (error) {
-    // The loop without this part may be harder to follow than the one with it: then the part has no say.
-    if (error instanceof TooMuchWorkError) return null
+    // The loop without this part may be harder to follow than the one with it, or have no response at all: then the part has no say.
+    if (error instanceof NoAnswerError) return null
     throw error
   }
 }
 
 /** The figures of the root nearest the design point. With dead time its share is that among the roots near the origin; sampled roots have none. */
-function placesAbout({ poles, functions, stable }: ClosedLoop, designPoint: Complex, isSampled: boolean): Pick<NonNullable<DesignSolution['dominance']>, 'residueShare' | 'nextPoleRatio'> {
+function placesAbout({ poles, functions, stable }: ClosedLoop, zeros: readonly Complex[], designPoint: Complex, isSampled: boolean): Omit<NonNullable<DesignSolution['dominance']>, 'sentence'> {
   const upper = poles.filter(({ im }) => im >= 0)
   const pair = upper.reduce((nearest, pole) => distance(pole, designPoint) < distance(nearest, designPoint) ? pole : nearest)
   const others = upper.filter(pole => pole !== pair).map(({ re }) => re)
@@ -95,7 +95,11 @@ function placesAbout({ poles, functions, stable }: ClosedLoop, designPoint: Comp
   const weight = (pole: Complex) => (pole.im > 0 ? 2 : 1) * abs(evaluateComplex(reference.numerator, pole)) * Math.exp(-pole.re * deadTime)
     / abs(evaluateQuasi({ ...loop, deadTime }, pole).slope) / abs(pole)
   const share = weight(pair) / upper.reduce((sum, pole) => sum + weight(pole), 0)
-  return { residueShare: isSampled || !stable || !Number.isFinite(share) ? null : share, nextPoleRatio: others.length > 0 && Number.isFinite(ratio) ? ratio + 0 : null }
+  return {
+    residueShare: isSampled || !stable || !Number.isFinite(share) ? null : share,
+    nextPoleRatio: others.length > 0 && Number.isFinite(ratio) ? ratio + 0 : null,
+    nearestZeroDistance: zeros.length === 0 ? null : Math.min(...zeros.map(zero => distance(zero, pair))),
+  }
 }
 
 const hasDelay = (model: LoopModel) => (model.deadTime ?? 0) > 0

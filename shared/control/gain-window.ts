@@ -4,7 +4,6 @@ import { NoAnswerError, TooMuchWorkError } from './errors'
 import { imaginaryAxisCrossings } from './locus/crossings'
 import { readAll, type ReadingOptions } from './readings'
 import type { LoopResponse } from './response/response'
-import { refuseMoreWork } from './response/work'
 import { scaleGains } from './scale-gains'
 import type { Controller, Gains, GainWindow, Interval, LoopModel, ReadingName, Requirement } from './types'
 import { judge } from './verdicts'
@@ -55,7 +54,7 @@ export function* gainWindowSteps(
   model: LoopModel, controller: Controller, gains: Gains, requirements: readonly Requirement[], options: ReadingOptions = { amplitude: 1, settlingBandPercent: 2 },
 ): Steps<GainWindow> {
   const sampleAt: Sampler = function* (x) {
-    if (yield) refuseMoreWork()
+    if (yield) throw new TooMuchWorkError('the room for the gain of this loop takes too long to compute')
     const work = { pieces: piecesPerSample }
     return { x, room: roomAt(() => closeLoop(model, controller, scaleGains(gains, Math.exp(x)), work), requirements, options) }
   }

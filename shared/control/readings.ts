@@ -31,7 +31,7 @@ export function readAll(closed: ClosedLoop, step: LoopResponse | null, options: 
     finalValue: scaled(figures.finalValue),
     steadyStateErrorStep: scaled(closed.stationaryError(1)),
     steadyStateErrorRamp: scaled(closed.stationaryError(2)),
-    peakEffort: step.effort.impulsive ? null : largestSize(step.effort) * Math.abs(amplitude),
+    peakEffort: step.effort.impulsive ? null : Math.min(step.bound ?? Infinity, largestSize(step.effort)) * Math.abs(amplitude),
     ...ofLoop,
   })
 }

@@ -58,11 +58,15 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
   const { functions, poles, stable } = closed
   const step = closed.respondTo('reference-step', amplitude)
   const readings = readAll(closed, step, { amplitude, settlingBandPercent })
-  const designPoint = asked ?? dominantPole(poles, functions) ?? zero
+  const shown = sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), poles, response)
+  const continuous = model.sampling === undefined
+    ? undefined
+    : withoutSampling(model, controller, placement.gains, { ...response, duration: shown.time[shown.time.length - 1]! })
+  // Gains belong to points of the continuous loop, whether or not the controller is sampled.
+  const designPoint = asked ?? dominantPole(continuous?.closedLoopPoles ?? poles, functions) ?? zero
   const estimate = estimateAt(designPoint)
   const zeros = isZero(functions.reference.numerator) ? [] : roots(functions.reference.numerator)
   const verdicts = judge(options.requirements ?? [], readings, poles, stable)
-  const shown = sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), poles, response)
   return {
     gains: placement.gains,
     alternatives: placement.alternatives,
@@ -82,7 +86,7 @@ function evaluate(model: LoopModel, controller: Controller, placement: Placement
     verdicts,
     unmet: verdicts.filter(verdict => !verdict.met).length,
     uncertain: isRational(model) ? uncertainFigures(closed, readings, { amplitude, settlingBandPercent }) : [],
-    ...(model.sampling === undefined ? {} : { continuous: withoutSampling(model, controller, placement.gains, { ...response, duration: shown.time[shown.time.length - 1]! }) }),
+    ...(continuous === undefined ? {} : { continuous }),
   }
 }
 
@@ -92,15 +96,22 @@ function isRational({ deadTime = 0, actuatorLimit, sampling }: LoopModel): boole
 }
 
 /** The loop as it was designed, over the same time. */
-function withoutSampling(model: LoopModel, controller: Controller, gains: Gains, response: ResponseOptions): ContinuousDesign {
+function withoutSampling(model: LoopModel, controller: Controller, gains: Gains, response: ResponseOptions): ContinuousDesign | undefined {
   const { input = 'reference-step', amplitude = 1, settlingBandPercent = usualSettlingBandPercent } = response
-  const closed = closeLoop({ ...model, sampling: undefined }, controller, gains)
-  const step = closed.respondTo('reference-step', amplitude)
-  return {
-    stable: closed.stable,
-    closedLoopPoles: closed.poles,
-    response: sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), closed.poles, response),
-    readings: readAll(closed, step, { amplitude, settlingBandPercent }),
+  try {
+    const closed = closeLoop({ ...model, sampling: undefined }, controller, gains)
+    const step = closed.respondTo('reference-step', amplitude)
+    return {
+      stable: closed.stable,
+      closedLoopPoles: closed.poles,
+      response: sampleResponse(input === 'reference-step' ? step : closed.respondTo(input, amplitude), closed.poles, response),
+      readings: readAll(closed, step, { amplitude, settlingBandPercent }),
+    }
+  }
+  catch (error) {
+    // What has an answer at samples need not have one without them (an ideal derivative behind a dead time).
+    if (error instanceof NoAnswerError) return undefined
+    throw error
   }
 }
 

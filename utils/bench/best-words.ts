@@ -57,10 +57,11 @@ function sayPlaces(places: number, readings: string[]): string {
   return `It is one of ${places} places where this ray meets the locus${faster}.`
 }
 
-function sayNothingMet({ over, closest, hindrance }: BestPoint): string[] {
+function sayNothingMet({ over, closest, hindrance, cutShort }: BestPoint): string[] {
   if (!closest) return [sayHindrance(hindrance!, over)]
   const broken = closest.verdicts.filter(({ met }) => !met).map(sayBroken)
-  return [`No point ${rooms[over]} meets every requirement.`, `The closest breaks ${broken.join(', ')}: ${sayPlace(closest)}.`]
+  const none = cutShort ? `No point ${rooms[over]} that the search came to meets every requirement.` : `No point ${rooms[over]} meets every requirement.`
+  return [none, `The closest breaks ${broken.join(', ')}: ${sayPlace(closest)}.`]
 }
 
 function sayBroken(verdict: Verdict): string {

@@ -41,10 +41,12 @@ interface Plan {
   planned: number
   /** Seconds, of the order in which the loop moves. */
   timeScale: number
+  /** The present design where it is one of the room: no search may come out worse than what is there. */
+  present: Trial | null
 }
 
 /** The account of a search; that of the point where it starts is the first evaluation. */
-export function beginSearch(problem: Problem, { over, planned, timeScale }: Plan): Search {
+export function beginSearch(problem: Problem, { over, planned, timeScale, present }: Plan): Search {
   let evaluations = 1
   let finishing = false
   let best: Trial | null = null
@@ -63,6 +65,8 @@ export function beginSearch(problem: Problem, { over, planned, timeScale }: Plan
     met.push({ point: trial.designPoint, settlingTime: trial.settlingTime! })
     if (best === null || isBetter(trial, best)) best = trial
   }
+
+  if (present !== null) see(present)
 
   function progress(): SearchProgress {
     return { share: Math.min(1, evaluations / planned), evaluations, best: best && toCandidate(best) }

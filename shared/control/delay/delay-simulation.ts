@@ -1,9 +1,10 @@
+import { findRoot } from '../../numerics/find-root'
 import { leading } from '../../numerics/polynomial'
 import { roots } from '../../numerics/roots'
 import type { LoopFunctions } from '../controller'
 import { NoAnswerError } from '../errors'
 import { gridOf } from '../response/grid'
-import { PiecewiseSignal } from '../response/piecewise'
+import { interpolate, PiecewiseSignal } from '../response/piecewise'
 import { respond } from '../response/response'
 import { realise, sectionsOf } from '../response/state-space'
 import { nodesPerPiece, StepPropagator } from '../response/step-propagator'
@@ -12,6 +13,7 @@ import { polynomialAt, type Trajectory } from '../response/trajectory'
 import { relativeDegree } from '../transfer-function'
 import type { ResponseInput, TransferFunction } from '../types'
 
+const last = nodesPerPiece - 1
 /** How much finer than the loop's own pace the corners of a limited output are resolved, and for how many dead times after the last one. */
 const cornerShare = 8
 const periodsToSmooth = 4
@@ -23,7 +25,7 @@ const periodsToSmooth = 4
  */
 export class DelaySimulation {
   readonly output = new PiecewiseSignal()
-  readonly effort = new PiecewiseSignal()
+  readonly effort: PiecewiseSignal
   private readonly fine: StepPropagator[]
   private readonly smooth: StepPropagator[]
   private grid: StepPropagator[]
@@ -46,6 +48,7 @@ export class DelaySimulation {
    */
   constructor(private readonly functions: LoopFunctions, input: ResponseInput, crossover: number, private readonly work: Work, private readonly limit = Infinity) {
     const { loop, disturbance, controller, deadTime } = functions
+    this.effort = new PiecewiseSignal(limit)
     const poles = roots(loop.denominator)
     const system = realise(sectionsOf(poles), loop.denominator)
     const plant: TransferFunction = { numerator: disturbance.numerator, denominator: loop.denominator }
@@ -102,11 +105,11 @@ export class DelaySimulation {
       const y = step.values(0, this.state, w)
       const u = step.values(1, this.state, w)
       for (let node = 0; node < nodesPerPiece; node++) {
-        const t = start + step.length * node / (nodesPerPiece - 1)
-        const wanted = polynomialAt(this.free.remains, t) + this.free.transient(t) - u[node]!
-        u[node] = Math.max(-this.limit, Math.min(this.limit, wanted))
-        if (u[node] !== wanted) this.limitedUntil = t
+        const t = start + step.length * node / last
+        u[node] = polynomialAt(this.free.remains, t) + this.free.transient(t) - u[node]!
       }
+      this.noteLimit(start, step.length, u)
+      u.forEach((wanted, node) => { u[node] = Math.max(-this.limit, Math.min(this.limit, wanted)) })
       this.output.add(start, step.length, y)
       this.effort.add(start, step.length, u)
       this.state = step.end(this.state, w)
@@ -114,6 +117,15 @@ export class DelaySimulation {
       return u
     })
     this.periods += 1
+  }
+
+  /** The last instant of a piece at which the controller wishes for more than the limit. */
+  private noteLimit(start: number, length: number, wanted: Float64Array): void {
+    const beyond = (value: number) => Math.abs(value) - this.limit
+    const node = wanted.findLastIndex(value => beyond(value) > 0)
+    if (node < 0) return
+    const leaves = node === last ? last : findRoot(position => beyond(interpolate(wanted, position)), node, node + 1)
+    this.limitedUntil = start + length * leaves / last
   }
 
   /** Corners that a limit cuts ask for short pieces, until the loop has smoothed them. */
@@ -124,7 +136,7 @@ export class DelaySimulation {
     this.grid = wanted
     let start = this.time - deadTime
     this.before = wanted.map(({ length }) => {
-      const values = Float64Array.from({ length: nodesPerPiece }, (_, node) => this.effort.at(start + length * node / (nodesPerPiece - 1) * (1 - 1e-12)))
+      const values = Float64Array.from({ length: nodesPerPiece }, (_, node) => this.effort.at(start + length * node / last * (1 - 1e-12)))
       start += length
       return values
     })

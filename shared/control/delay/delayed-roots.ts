@@ -8,6 +8,8 @@ import { evaluateQuasi, type QuasiPolynomial } from './quasi-polynomial'
 
 /** Order of the rational stand-in for the delay from which the polishing starts: good to about |s| deadTime = its size. */
 const padeOrder = 8
+/** Angle (radians) below which a crossing is one without any dead time. */
+const onAxis = 1e-9
 /** Total order that the root finder of polynomials takes. */
 const highestOrder = 40
 /** Roots of the delay's own chain that are looked for, beyond those up to the highest gain crossover. */
@@ -91,9 +93,11 @@ function countUnstable({ numerator, denominator, deadTime }: QuasiPolynomial, cr
     const ratio = complex.divide(polynomial.evaluateComplex(denominator, s), polynomial.evaluateComplex(numerator, s))
     const turn = 2 * Math.PI
     // e^(-jwT) = -D/N.
-    const angle = (-complex.arg(complex.negate(ratio)) + turn) % turn
-    const crossings = Math.max(0, Math.floor((frequency * deadTime - angle) / turn) + 1)
-    count += 2 * sense * crossings
+    const turned = (-complex.arg(complex.negate(ratio)) + turn) % turn
+    const onAxisAtZero = Math.min(turned, turn - turned) < onAxis
+    const crossings = Math.max(0, Math.floor((frequency * deadTime - (onAxisAtZero ? 0 : turned)) / turn) + 1)
+    // A pair that stands on the axis without dead time is not among those on the right: if it leaves to the left, it never crossed.
+    count += 2 * sense * (onAxisAtZero && sense < 0 ? crossings - 1 : crossings)
   }
   return count
 }

@@ -33,7 +33,7 @@ export function limitedResponse(loop: ClosedLoop, input: ResponseInput, amplitud
   const bound = limit / Math.abs(amplitude)
   if (loop.stable) {
     const linear = loop.respondTo(input, amplitude)
-    if (!linear.effort.impulsive && input !== 'reference-ramp' && largestSize(linear.effort) <= bound) return { ...linear, limitedUntil: 0 }
+    if (!linear.effort.impulsive && input !== 'reference-ramp' && largestSize(linear.effort) <= bound) return { ...linear, bound, limitedUntil: 0 }
   }
   const simulation: Simulation = loop.functions.deadTime > 0
     ? new DelaySimulation(loop.functions, input, actingSpeed(loop.functions, loop.poles), work, bound)
@@ -49,6 +49,7 @@ export function limitedResponse(loop: ClosedLoop, input: ResponseInput, amplitud
   return {
     output: trajectoryOf(simulation.output, { remains: remains.output, decays: true }),
     effort: trajectoryOf(simulation.effort, { remains: remains.effort, decays: true }),
+    bound,
     limitedUntil: simulation.limitedUntil,
   }
 }

@@ -13,6 +13,9 @@ export class PiecewiseSignal {
   readonly lengths: number[] = []
   readonly values: Float64Array[] = []
 
+  /** @param bound on the size of the signal: between nodes a corner would throw the polynomial beyond it */
+  constructor(private readonly bound = Infinity) {}
+
   add(start: number, length: number, values: Float64Array): void {
     this.starts.push(start)
     this.lengths.push(length)
@@ -32,7 +35,7 @@ export class PiecewiseSignal {
   /** The value just after t; beyond the end that of the last instant. */
   at(t: number): number {
     const i = this.pieceAt(t)
-    return interpolate(this.values[i]!, this.position(i, t))
+    return Math.max(-this.bound, Math.min(this.bound, interpolate(this.values[i]!, this.position(i, t))))
   }
 
   /** The slope just after t. */
@@ -59,7 +62,8 @@ export class PiecewiseSignal {
   }
 }
 
-function interpolate(values: Float64Array, position: number): number {
+/** The polynomial through nine values at a position 0..8. */
+export function interpolate(values: Float64Array, position: number): number {
   let above = 0
   let below = 0
   for (let j = 0; j < nodesPerPiece; j++) {

@@ -32,6 +32,8 @@ export interface LoopResponse {
   effort: Trajectory
   /** With a limit on the controller output: the last instant at which it cut the output off (0: never; infinite: for ever). */
   limitedUntil?: number
+  /** That limit, for an input of size 1. */
+  bound?: number
 }
 
 /** The loop's answer to an input; the disturbance enters at the plant input. */

@@ -16,6 +16,9 @@ const longestStride = 2 ** 30
 const straightPieces = 2000
 const last = nodesPerPiece - 1
 
+/** What a constant input does by itself: what one period adds to the state, and to the controller output at its start. */
+export interface Drive { state: Float64Array, effort: number }
+
 /** Seconds until a root is gone. */
 export function lifeOf({ re }: Complex): number {
   return gone / -re
@@ -34,17 +37,17 @@ export function quickLifeOf(root: Complex, period: number): number {
 /**
  * The end of a sampled response, when only roots move that are slow against the period: values at every 2^n-th sample, ever further apart as roots die out. Where a
  * quick root lives on (all but undamped), straight pieces from sample to sample, later ever further apart, so that no loop, however strange, takes long.
- * @param driven what one period adds to the state at rest under the input
+ * @param start.since when the roots began to die out: at 0, or when the limit was left
  * @param state at `from`
  */
 export function followCoarsely(
-  { map, driven, period, poles, work }: { map: PeriodMap, driven: Float64Array, period: number, poles: readonly Complex[], work: Work },
+  { map, driven, period, poles, since, work }: { map: PeriodMap, driven: Drive, period: number, poles: readonly Complex[], since: number, work: Work },
   signals: { output: PiecewiseSignal, effort: PiecewiseSignal }, state: Float64Array, from: number, until: number,
 ): void {
   const { size, matrix } = map
-  const rest = solveLinear(matrix.map((entry, i) => (i % (size + 1) === 0 ? 1 : 0) - entry), driven, size, 1)
+  const rest = solveLinear(matrix.map((entry, i) => (i % (size + 1) === 0 ? 1 : 0) - entry), driven.state, size, 1)
   const level = (row: Float64Array) => row.reduce((sum, weight, i) => sum + weight * rest[i]!, 0)
-  const [output, effort] = [level(map.output), level(map.effort)]
+  const [output, effort] = [level(map.output), level(map.effort) + driven.effort]
   let away: Float64Array = state.map((entry, i) => entry - rest[i]!)
   let stride = 1
   let power = matrix
@@ -56,7 +59,7 @@ export function followCoarsely(
   let straight = 0
   for (let t = from; t < until;) {
     if (--work.pieces < 0) refuseMoreWork('loop.samplePeriod')
-    const fastest = poles.reduce((most, { re, im }) => t * -re < gone ? Math.max(most, Math.hypot(re, im)) : most, 0)
+    const fastest = poles.reduce((most, { re, im }) => (t - since) * -re < gone ? Math.max(most, Math.hypot(re, im)) : most, 0)
     while (2 * stride * last * period * fastest <= pieceAngle && stride < longestStride) lengthen()
     const bent = stride * last * period * fastest <= pieceAngle
     if (!bent && ++straight % straightPieces === 0 && stride < longestStride) lengthen()

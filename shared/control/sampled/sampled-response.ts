@@ -63,9 +63,10 @@ class SampledSimulation {
   finish(poles: readonly Complex[], until: number): boolean {
     const { held, controller, period, input, limit } = this.run
     const inputs = { reference: input === 'reference-step' ? 1 : 0, disturbance: input === 'disturbance-step' ? 1 : 0 }
-    const driven = flat(linearPeriod(held, controller, restingState(held, controller), inputs).next)
+    const { next, u } = linearPeriod(held, controller, restingState(held, controller), inputs)
+    const driven = { state: flat(next), effort: u }
     const rest = { output: new PiecewiseSignal(), effort: new PiecewiseSignal() }
-    followCoarsely({ map: periodMap(held, controller), driven, period, poles, work: this.run.work }, rest, flat(this.state), this.time, until)
+    followCoarsely({ map: periodMap(held, controller), driven, period, poles, since: this.limitedUntil, work: this.run.work }, rest, flat(this.state), this.time, until)
     if (rest.effort.values.some(values => values.some(value => Math.abs(value) > limit * (1 + 1e-9)))) return false
     this.output.append(rest.output)
     this.effort.append(rest.effort)
@@ -129,7 +130,7 @@ export function sampledResponse(run: SampledRun, remains: { output: number[], ef
   return {
     output: trajectoryOf(simulation.output, { remains: remains.output, decays: settled }),
     effort: trajectoryOf(simulation.effort, { remains: remains.effort, decays: settled }),
-    ...(run.limit === Infinity ? {} : { limitedUntil: settled ? simulation.limitedUntil : Infinity }),
+    ...(run.limit === Infinity ? {} : { bound: run.limit, limitedUntil: settled ? simulation.limitedUntil : Infinity }),
   }
 }
 

@@ -186,6 +186,13 @@ describe('a loop with dead time', () => {
     expect(steady.stationaryError(1)).toBeCloseTo(1 / 2.5, 12)
   })
 
+  it('counts a pair that leaves the axis to the left as stable', () => {
+    // s^2 + 1 - 0.5 e^(-0.3 s): feedback of the output, late, damps the pair (positive feedback here).
+    const closed = closeLoop({ plant: { numerator: [-0.5], denominator: [1, 0, 1] }, rateFeedback: 0, deadTime: 0.3 }, gainForm, { k: 1 })
+    expect(Math.max(...closed.poles.map(pole => pole.re))).toBeLessThan(-0.05)
+    expect(closed.stable).toBe(true)
+  })
+
   it('refuses what it cannot follow, and tends to the loop without dead time', () => {
     const model = (deadTime: number): LoopModel => ({ plant: { numerator: [4], denominator: [1, 3, 0] }, rateFeedback: 0, deadTime })
     const without = solveDesign({ ...model(0) }, gainForm, { gains: { k: 1.7 } }).readings

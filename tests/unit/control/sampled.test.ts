@@ -179,3 +179,22 @@ function integrate({ numerator, denominator }: LoopModel['plant'], { period, del
   }
   return witness
 }
+
+describe('the effort of a sampled loop', () => {
+  it('comes to rest where the loop does, long after the samples are no longer followed one by one', () => {
+    const { response, readings } = solveDesign(sampled(servo, 0.001), gainForm, { gains: { k: 0.5 } }, { response: { duration: 40 } })
+    expect(readings.peakEffort).toBeCloseTo(0.5, 12)
+    expect(response.effort.at(-1)!).toBeCloseTo(0, 6)
+    response.effort.forEach((u, i) => expect(u).toBeCloseTo(0.5 * (1 - response.output[i]!), 2))
+    const pi = solveDesign(sampled({ numerator: [1], denominator: [1, 1] }, 0.001), { form: 'pi' }, { gains: { kp: 1, ki: 1 } }, { response: { duration: 40 } })
+    expect(pi.response.effort.at(-1)!).toBeCloseTo(1, 6)
+  })
+
+  it('is followed to rest after a slew that lasted longer than any root', () => {
+    const model = sampled({ numerator: [1], denominator: [1, 0] }, 0.002, { actuatorLimit: 0.04 })
+    const { readings, response } = solveDesign(model, gainForm, { gains: { k: 1 } })
+    // 1 - 0.04 t until 0.04 is left of the error, then e^-t: settled to 2 % at 24 + ln 2.
+    expect(response.limitedUntil!).toBeCloseTo(24, 1)
+    expect(readings.settlingTime!).toBeCloseTo(24 + Math.log(2), 2)
+  })
+})

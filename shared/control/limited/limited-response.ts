@@ -1,4 +1,5 @@
 import type { ClosedLoop } from '../closed-loop'
+import { NoAnswerError } from '../errors'
 import { actingSpeed } from '../delay/delayed-loop'
 import { DelaySimulation } from '../delay/delay-simulation'
 import { delayedRemains } from '../delay/limits-at-rest'
@@ -32,8 +33,8 @@ interface Simulation {
 export function limitedResponse(loop: ClosedLoop, input: ResponseInput, amplitude: number, limit: number, work: Work): LoopResponse {
   const bound = limit / Math.abs(amplitude)
   if (loop.stable) {
-    const linear = loop.respondTo(input, amplitude)
-    if (!linear.effort.impulsive && input !== 'reference-ramp' && largestSize(linear.effort) <= bound) return { ...linear, bound, limitedUntil: 0 }
+    const linear = linearOrNull(loop, input, amplitude)
+    if (linear !== null && !linear.effort.impulsive && input !== 'reference-ramp' && largestSize(linear.effort) <= bound) return { ...linear, bound, limitedUntil: 0 }
   }
   const simulation: Simulation = loop.functions.deadTime > 0
     ? new DelaySimulation(loop.functions, input, actingSpeed(loop.functions, loop.poles), work, bound)
@@ -51,6 +52,17 @@ export function limitedResponse(loop: ClosedLoop, input: ResponseInput, amplitud
     effort: trajectoryOf(simulation.effort, { remains: remains.effort, decays: true }),
     bound,
     limitedUntil: simulation.limitedUntil,
+  }
+}
+
+/** An impulse that comes back again and again has no linear response; the limit swallows it. */
+function linearOrNull(loop: ClosedLoop, input: ResponseInput, amplitude: number): LoopResponse | null {
+  try {
+    return loop.respondTo(input, amplitude)
+  }
+  catch (error) {
+    if (error instanceof NoAnswerError) return null
+    throw error
   }
 }
 

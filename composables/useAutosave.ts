@@ -12,7 +12,7 @@ export function useAutosave({ scenarioId, draftKey }: { scenarioId: string, draf
   const state = shallowRef<SaveState>({ kind: 'saved' })
 
   const machine = saveMachine({
-    saved: snapshot(),
+    saved: acknowledged(),
     version: bench.version!,
     send: (version, sent) => callApi<Scenario>(`/api/scenarios/${scenarioId}`, { method: 'PATCH', body: { version, ...sent } }),
     keep: (version, { document, ...names }) => keepDraft(localStorage, draftKey, { ...names, document, version }),
@@ -20,6 +20,12 @@ export function useAutosave({ scenarioId, draftKey }: { scenarioId: string, draf
     show: (shown) => { state.value = shown },
     onSaved: ({ id, version }, { document }) => bench.markSaved({ id, version, document }),
   })
+
+  /** What the server has: work may have gone on since it was sent, while this page was still on its way. */
+  function acknowledged(): Snapshot {
+    const { document, title, machine, axis } = bench.baseline ?? bench
+    return { document: toRaw(document), title, machine, axis }
+  }
 
   function snapshot(): Snapshot {
     return { document: toRaw(bench.document), title: bench.title, machine: bench.machine, axis: bench.axis }
@@ -67,6 +73,7 @@ export function useAutosave({ scenarioId, draftKey }: { scenarioId: string, draf
 
   watch(() => [bench.document, bench.title, bench.machine, bench.axis, bench.gestureStart], tell)
   onMounted(() => {
+    tell()
     addEventListener('beforeunload', onUnload)
     addEventListener('online', onOnline)
   })

@@ -13,7 +13,8 @@ async function owner() {
   const bench = await new BenchPage(someone.page).open('/')
   await (await nameScenario(someone.page, { title: 'Heavier hook block' })).getByRole('button', { name: 'Save', exact: true }).click()
   await someone.page.waitForURL('**/scenarios/*')
-  await bench.ready()
+  // The dialog stays open, and the page behind it out of reach, until the page of the scenario is there: it alone tells of saving.
+  await saveState(someone.page, /^saved$/)
   return { ...someone, account, bench, notes: someone.page.locator('[data-test="notes"]') }
 }
 

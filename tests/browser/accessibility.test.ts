@@ -5,7 +5,7 @@ import type { Page } from 'playwright-core'
 import { describe, expect, it } from 'vitest'
 import { BenchPage } from '../helpers/bench-page'
 import { desktop, phone } from '../helpers/browser'
-import { nameScenario, newAccount, register, shareLink, writeComment } from '../helpers/people-pages'
+import { nameScenario, newAccount, register, saveAs, saveState, shareLink, writeComment } from '../helpers/people-pages'
 import { stage } from '../helpers/stage'
 
 const { visit } = stage()
@@ -76,7 +76,7 @@ describe.each([
     await look('the dialog that saves')
     await dialog.getByRole('button', { name: 'Save', exact: true }).click()
     await page.waitForURL('**/scenarios/*')
-    await bench.ready()
+    await saveState(page, /^saved$/)
     const link = await shareLink(page, 'comment')
     await writeComment(page, { body: 'Is the brake released here?' })
     await page.locator('[data-test="comment"]').waitFor()
@@ -111,10 +111,7 @@ describe('the bench with limits broken', () => {
     const { page, leave } = await visit()
     await register(page, newAccount('Runa Holt'))
     const bench = await new BenchPage(page).open('/')
-    const dialog = await nameScenario(page, { title: 'A title so long that it says what is carried, by which crane, and in what weather, all at once' })
-    await dialog.getByRole('button', { name: 'Save', exact: true }).click()
-    await page.waitForURL('**/scenarios/*')
-    await bench.ready()
+    await saveAs(page, 'A title so long that it says what is carried, by which crane, and in what weather, all at once')
     await bench.placePoint(0.2, 2.2)
     await page.locator('[data-test="row-overshoot"]').getByText('not met').waitFor()
     const tooWide: object[] = []

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { BenchPage } from '../helpers/bench-page'
-import { nameScenario, newAccount, register, saveState, signIn, signOut } from '../helpers/people-pages'
+import { newAccount, register, saveState, saveAs, signIn, signOut } from '../helpers/people-pages'
 import { stage } from '../helpers/stage'
 
 const { visit } = stage()
@@ -11,10 +11,7 @@ async function owner() {
   const someone = await visit()
   await register(someone.page, account)
   const bench = await new BenchPage(someone.page).open('/')
-  await (await nameScenario(someone.page, { title: 'Heavier hook block' })).getByRole('button', { name: 'Save', exact: true }).click()
-  await someone.page.waitForURL('**/scenarios/*')
-  // The dialog stays open, and the page behind it out of reach, until the page of the scenario is there: it alone tells of saving.
-  await saveState(someone.page, /^saved$/)
+  await saveAs(someone.page, 'Heavier hook block')
   return { ...someone, account, bench, notes: someone.page.locator('[data-test="notes"]') }
 }
 

@@ -1,37 +1,9 @@
-import { afterEach, describe, expect, it } from 'vitest'
-import { slewDocument } from '../fixtures/document'
+import { describe, expect, it } from 'vitest'
 import { BenchPage } from '../helpers/bench-page'
-import { phone, type Visitor } from '../helpers/browser'
-import { commentsOf, focused, nameScenario, newAccount, register, registerHere, saveState, shareLink, signIn, signInHere, signOut, writeComment } from '../helpers/people-pages'
-import { stage } from '../helpers/stage'
+import { commentsOf, nameScenario, newAccount, register, registerHere, saveState, shareLink, signIn, signInHere, signOut, writeComment } from '../helpers/people-pages'
+import { peopleStage } from '../helpers/people-stage'
 
-const { visit, origin } = stage()
-
-let visitors: Visitor[] = []
-
-afterEach(async () => {
-  const all = visitors
-  visitors = []
-  for (const one of all) await one.leave()
-})
-
-async function arrive(options?: Parameters<typeof visit>[0]): Promise<Visitor> {
-  const someone = await visit(options)
-  visitors.push(someone)
-  return someone
-}
-
-/** Somebody with a saved scenario on the bench. */
-async function owner(title = 'Heavier hook block') {
-  const someone = await arrive()
-  await register(someone.page, newAccount('Runa Holt'))
-  const bench = await new BenchPage(someone.page).open('/')
-  await bench.placePoint(0.55, 0.9)
-  await (await nameScenario(someone.page, { title })).getByRole('button', { name: 'Save', exact: true }).click()
-  await someone.page.waitForURL('**/scenarios/*')
-  await bench.ready()
-  return { ...someone, bench }
-}
+const { origin, arrive, owner } = peopleStage()
 
 describe('from the first drag to a colleague who answers', () => {
   it('keeps the work through signing up, saves it, shares it, and hears the comment without reloading', async () => {
@@ -108,175 +80,6 @@ describe('a person with an account, signed out', () => {
   })
 })
 
-describe('a dialog', () => {
-  it('begins at its first field or its main action, leads to what is wrong, and comes to closing last', async () => {
-    const { page } = await owner()
-    await page.goto('/')
-    await new BenchPage(page).ready()
-    await page.getByRole('button', { name: 'Save', exact: true }).click()
-    await expect.poll(() => focused(page)).toBe('Title')
-    await page.keyboard.press('Delete')
-    await page.keyboard.press('Tab')
-    await page.keyboard.press('Enter')
-    await page.getByText('give the scenario a title').waitFor()
-    await expect.poll(() => focused(page)).toBe('Title')
-    for (const stop of ['Machine', 'Axis', 'Save']) {
-      await page.keyboard.press('Tab')
-      expect(await focused(page)).toBe(stop)
-    }
-    await page.keyboard.press('Tab')
-    expect(await page.evaluate(() => document.activeElement?.getAttribute('aria-label'))).toBe('Close')
-    await page.keyboard.press('Enter')
-
-    await page.goto('/scenarios')
-    await page.getByRole('button', { name: /^Rename/ }).click()
-    await expect.poll(() => focused(page)).toBe('Title')
-    await page.keyboard.type('Heavier still')
-    await page.keyboard.press('Enter')
-    await page.getByRole('link', { name: 'Heavier still' }).click()
-    await new BenchPage(page).ready()
-    await page.getByRole('button', { name: 'Share', exact: true }).click()
-    await expect.poll(() => focused(page)).toBe('look, try a what-if and comment')
-  })
-})
-
-describe('a message that goes by itself', () => {
-  it('stays for as long as it is pointed at or holds the focus', async () => {
-    const { page } = await arrive()
-    await register(page, newAccount('Runa Holt'))
-    await page.request.post('/api/scenarios', { headers: { origin: origin() }, data: { title: 'Heavier hook block', machine: '', axis: '', document: slewDocument } })
-    await page.clock.install()
-    await page.goto('/scenarios')
-    await page.getByRole('button', { name: 'Delete Heavier hook block' }).click()
-    const message = page.locator('[data-test="toast"]')
-    await message.hover()
-    await page.clock.fastForward(30_000)
-    expect(await message.count()).toBe(1)
-    await message.getByRole('button', { name: 'Undo' }).focus()
-    await page.mouse.move(0, 0)
-    await page.clock.fastForward(30_000)
-    expect(await message.count()).toBe(1)
-    await page.getByRole('searchbox').focus()
-    await page.clock.fastForward(11_000)
-    expect(await message.count()).toBe(1)
-    await page.clock.fastForward(1_100)
-    await message.waitFor({ state: 'detached' })
-  })
-})
-
-describe('the title in the bar', () => {
-  it('leaves the focus where the person goes, and a long one leaves the row as it is', async () => {
-    const { page } = await owner()
-    const bar = page.locator('.bench-bar')
-    const height = async () => (await bar.boundingBox())!.height
-    const before = await height()
-    const title = page.locator('[data-test="title"]')
-    await title.click()
-    const long = 'Slew axis with the heavier hook block and the long boom, brakes released, wind from the side, second visit'
-    await page.keyboard.type(long)
-    await page.locator('[data-test="zeta"]').click()
-    await title.waitFor()
-    expect(await page.evaluate(() => document.activeElement?.getAttribute('data-test'))).toBe('zeta')
-    expect(await title.getAttribute('title')).toContain(long)
-    expect(await height()).toBe(before)
-    await title.click()
-    await page.keyboard.press('Enter')
-    await expect.poll(() => focused(page)).toBe(long)
-  })
-})
-
-describe('comments', () => {
-  it('are told to whoever works elsewhere on the page, not to their author', async () => {
-    const runa = await owner()
-    const link = await shareLink(runa.page, 'comment')
-    const guest = await arrive()
-    await new BenchPage(guest.page).open(link)
-    await writeComment(guest.page, { body: 'Is this with the trolley out?', name: 'Ilse Brandt' })
-    const told = runa.page.locator('[data-test="toast"]')
-    await told.getByText('Ilse Brandt commented.').waitFor()
-    await told.getByRole('button', { name: 'Show' }).click()
-    await expect.poll(() => focused(runa.page)).toContain('Is this with the trolley out?')
-    await told.waitFor({ state: 'detached' })
-
-    await commentsOf(runa.page).getByRole('button', { name: 'Reply' }).click()
-    const reply = runa.page.getByRole('form', { name: 'Reply' })
-    await reply.getByLabel('Reply').fill('It is.')
-    await reply.getByRole('button', { name: 'Send the reply' }).click()
-    const answered = guest.page.locator('[data-test="toast"]')
-    await answered.getByText('Runa Holt replied.').waitFor()
-    await answered.getByRole('button', { name: 'Show' }).click()
-    await expect.poll(() => focused(guest.page)).toContain('It is.')
-    expect(await told.count() + await answered.count()).toBe(0)
-  })
-
-  it('are pinned, answered, resolved and folded, and a flag and its comment lead to each other', async () => {
-    const runa = await owner()
-    const link = await shareLink(runa.page, 'comment')
-    const guest = await arrive()
-    const seen = await new BenchPage(guest.page).open(link)
-    await guest.page.locator('[data-test="pin-overshoot"]').click()
-    await writeComment(guest.page, { body: 'Is this with the trolley out?', name: 'Ilse Brandt' })
-    await expect.poll(() => commentsOf(runa.page).count()).toBe(1)
-    expect(await commentsOf(runa.page).first().innerText()).toMatch(/on overshoot/i)
-    await runa.page.locator('[data-test="row-overshoot"] [data-test="pin-1"]').click()
-    await expect.poll(() => runa.page.evaluate(() => document.activeElement?.textContent ?? '')).toContain('Is this with the trolley out?')
-
-    await writeComment(guest.page, { body: 'And here?', about: 'the design point where it stands' })
-    await guest.page.locator('[data-test="response"]').click({ position: { x: 300, y: 60 } })
-    await writeComment(guest.page, { body: 'It passes here first.' })
-    await runa.page.getByRole('region', { name: 'Response' }).locator('[data-test="pin-3"]').click()
-    await expect.poll(() => runa.page.evaluate(() => document.activeElement?.textContent ?? '')).toContain('It passes here first.')
-
-    const flag = runa.page.getByRole('button', { name: /^Comment 2 at/ })
-    await flag.click()
-    await expect.poll(() => runa.page.evaluate(() => document.activeElement?.textContent ?? '')).toContain('And here?')
-
-    await commentsOf(runa.page).nth(1).getByRole('button', { name: 'Reply' }).click()
-    const reply = runa.page.getByRole('form', { name: 'Reply' })
-    await reply.getByLabel('Reply').fill('Only with the hook block.')
-    await reply.getByRole('button', { name: 'Send the reply' }).click()
-    await guest.page.getByText('Only with the hook block.').waitFor()
-
-    await commentsOf(runa.page).nth(1).getByRole('button', { name: 'Resolve' }).click()
-    await guest.page.getByText('1 resolved').waitFor()
-    await guest.page.getByRole('button', { name: /^Comment 2 at/ }).waitFor({ state: 'hidden' })
-    expect(await guest.page.getByRole('button', { name: 'Resolve' }).count()).toBe(0)
-    expect(await seen.gain()).toBe(await runa.bench.gain())
-  })
-
-  it('are not offered by a link to view', async () => {
-    const runa = await owner()
-    const link = await shareLink(runa.page, 'view')
-    const guest = await arrive(phone)
-    await new BenchPage(guest.page).open(link)
-    await guest.page.locator('[data-test="comments"]').waitFor()
-    expect(await guest.page.getByRole('form', { name: 'New comment' }).count()).toBe(0)
-    expect(await guest.page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(390)
-  })
-})
-
-describe('a share link', () => {
-  it('shows the owner’s changes as they are saved, and nothing any more once it is revoked', async () => {
-    const runa = await owner()
-    const link = await shareLink(runa.page, 'view')
-    const guest = await arrive()
-    const seen = await new BenchPage(guest.page).open(link)
-    await runa.bench.placePoint(0.7, 1.05)
-    await saveState(runa.page, /^saved$/)
-    await seen.awaitFigure('omega-n', value => expect(value).toBeCloseTo(1.05, 12))
-
-    guest.expectFailure(404, /\/(api\/shared|s)\//)
-    await runa.page.getByRole('button', { name: 'Share', exact: true }).click()
-    const dialog = runa.page.getByRole('dialog')
-    await dialog.getByRole('button', { name: 'Revoke', exact: true }).click()
-    await dialog.getByRole('button', { name: 'Revoke it' }).click()
-    await dialog.getByText('None yet.').waitFor()
-    await guest.page.getByRole('heading', { name: 'This link does not work any more' }).waitFor()
-    expect((await guest.page.goto(link))!.status()).toBe(404)
-    await guest.page.getByRole('heading', { name: 'This link does not work any more' }).waitFor()
-  })
-})
-
 describe('the account forms', () => {
   it('name each field that is wrong, keep what was typed, and say the same for an unknown account as for a wrong password', async () => {
     const someone = await arrive()
@@ -315,7 +118,7 @@ describe('the account forms', () => {
     const runa = await owner()
     const address = new URL(runa.page.url()).pathname
     const account = newAccount('Runa Holt')
-    const { page } = await arrive()
+    const { page, expectFailure } = await arrive()
     await register(page, account)
     await signOut(page)
     await page.goto('/scenarios')
@@ -323,7 +126,7 @@ describe('the account forms', () => {
     await page.goto(`/sign-in?to=${encodeURIComponent('https://example.org/')}`)
     await signInHere(page, account)
     await page.waitForURL(`${origin()}/scenarios`)
-    visitors.at(-1)!.expectFailure(404, /\/scenarios\//)
+    expectFailure(404, /\/scenarios\//)
     expect((await page.goto(address))!.status()).toBe(404)
     await page.getByRole('heading', { name: 'There is nothing here' }).waitFor()
   })

@@ -52,6 +52,14 @@ export async function nameScenario(page: Page, names: { title: string, machine?:
   return dialog
 }
 
+/** Saves the bench under a title and waits for the page of the scenario. Until that is there the dialog stays open, and what lies behind it out of reach. */
+export async function saveAs(page: Page, title: string) {
+  await (await nameScenario(page, { title })).getByRole('button', { name: 'Save', exact: true }).click()
+  await page.waitForURL('**/scenarios/*')
+  // The page of a scenario alone tells of saving.
+  await saveState(page, /^saved$/)
+}
+
 export function saveState(page: Page, words: RegExp | string) {
   return expect.poll(() => page.locator('[data-test="save-state"]').innerText(), { timeout: 15_000 }).toMatch(words)
 }

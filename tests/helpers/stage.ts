@@ -1,5 +1,6 @@
 import type { Browser, BrowserContextOptions } from 'playwright-core'
-import { afterAll, beforeAll } from 'vitest'
+import { afterAll, afterEach, beforeAll, beforeEach } from 'vitest'
+import { BenchPage } from './bench-page'
 import { openBrowser, visitor, type Visitor } from './browser'
 import { startServer, type RunningServer } from './server'
 
@@ -19,4 +20,18 @@ export function stage() {
     visit: (options?: BrowserContextOptions): Promise<Visitor> => visitor(browser, server.origin, options),
     origin: () => server.origin,
   }
+}
+
+/** A stage on which tests begin with somebody new at the bench of `/`: all of a file, or of the `describe` in which `begin` is called. */
+export function benchStage() {
+  const { visit, origin } = stage()
+  const at = {} as { someone: Visitor, bench: BenchPage }
+  const begin = (options?: BrowserContextOptions) => {
+    beforeEach(async () => {
+      at.someone = await visit(options)
+      at.bench = await new BenchPage(at.someone.page).open('/')
+    })
+    afterEach(() => at.someone.leave())
+  }
+  return { visit, origin, at, begin }
 }

@@ -15,7 +15,7 @@ import { roots } from '#shared/numerics/roots'
 import { arbitraryLoop, loopGain } from '../helpers/arbitrary-loop'
 import { holds } from '../helpers/property'
 
-/** From 1e-4 to 1e4 rad/s, a hundred times as far as any place reaches on either side. */
+/** From 1e-4 to 1e4 rad/s: the places of these loops lie between 0.2 and 5 rad/s, and nothing happens that far beyond them. */
 const frequencies = Array.from({ length: 16001 }, (_, n) => 10 ** (n / 2000 - 4))
 
 interface Sweep {

@@ -1,7 +1,6 @@
 import { readFileSync } from 'node:fs'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
-import type { DesignSolution, FrequencyResponse, LoopAnalysis } from '#shared/control/types'
-import type { GainWindow } from '#shared/control/types'
+import type { DesignSolution } from '#shared/control/types'
 import type { SolveAnswer } from '#shared/schemas/design'
 import type { ErrorBody } from '#shared/schemas/errors'
 import { Client } from '../helpers/client'
@@ -126,116 +125,6 @@ describe('POST /api/design/solve', () => {
   })
 })
 
-describe('POST /api/loop/analyze', () => {
-  it('answers with the locus and its facts', async () => {
-    const { status, body } = await client.post<LoopAnalysis>('/api/loop/analyze', { loop, controller: { form: 'gain' }, dampingRatio: 0.5 })
-    expect(status).toBe(200)
-    expect(body.asymptotes).toEqual({ centroid: -1, anglesDeg: [60, 180, 300].map(angle => expect.closeTo(angle, 9)) })
-    expect(body.stableGain).toEqual([[0, expect.closeTo(6, 9)]])
-    expect(body.branches).toHaveLength(3)
-    expect(body.rayIntersections).toEqual([{ point: { re: expect.closeTo(-1 / 3, 10), im: expect.closeTo(1 / Math.sqrt(3), 10) }, gain: expect.closeTo(28 / 27, 10) }])
-  })
-
-  it('serves others while a costly gain window is computed, and refuses one that costs too much', async () => {
-    const plant = { form: 'zeros-poles-gain', zeros: [], poles: Array.from({ length: 20 }, (_, i) => ({ re: -1 - 0.3 * i, im: 0 })), gain: 1e3 }
-    const sensor = { form: 'zeros-poles-gain', zeros: [], poles: Array.from({ length: 20 }, (_, i) => ({ re: -50 - i, im: 0 })), gain: 1e30 }
-    const costly = client.post<ErrorBody>('/api/design/gain-window', {
-      ...good, loop: { plant, sensor, samplePeriod: 0.01, deadTime: 0.2999, computingDelay: 'one-sample', actuatorLimit: 1 },
-      requirements: [{ reading: 'overshootPercent', limit: 'at-most', value: 10 }, { reading: 'settlingTime', limit: 'at-most', value: 5 }],
-    })
-    let answered = false
-    costly.then(() => { answered = true })
-    await new Promise(resolve => setTimeout(resolve, 50))
-    expect((await client.get('/api/health')).status).toBe(200)
-    expect(answered).toBe(false)
-    const answer = await costly
-    expect([200, 422]).toContain(answer.status)
-  })
-
-  it.each([1e150, 1e300, 1e308])('answers over frequency with numbers or refuses, whatever the sample period: %s s', async (samplePeriod) => {
-    const answer = await client.post<FrequencyResponse>('/api/loop/frequency', { ...good, loop: { ...loop, samplePeriod } })
-    expect([200, 422]).toContain(answer.status)
-    if (answer.status === 200) expect(answer.body.phaseDeg.every(Number.isFinite)).toBe(true)
-  })
-
-  it('answers with the locus of a loop with dead time: crossings to the border of stability, no asymptotes', async () => {
-    const { body } = await client.post<LoopAnalysis>('/api/loop/analyze', { loop: { plant: { form: 'coefficients', numerator: [1], denominator: [1, 0] }, deadTime: 2 }, controller: { form: 'gain' }, dampingRatio: 0.5 })
-    expect(body.openLoop.deadTime).toBe(2)
-    expect(body.asymptotes).toBeNull()
-    // k e^(-2s)/s: unstable from k = pi/4 on, breakaway at s = -1/2 (K = 1/(2 e)).
-    expect(body.stableGain).toEqual([[0, expect.closeTo(Math.PI / 4, 11)]])
-    expect(body.imaginaryAxisCrossings[0]).toEqual({ frequency: expect.closeTo(Math.PI / 4, 11), gain: expect.closeTo(Math.PI / 4, 11) })
-    expect(body.breakaways).toEqual([{ point: { re: expect.closeTo(-0.5, 11), im: 0 }, gain: expect.closeTo(1 / (2 * Math.E), 11) }])
-    expect(body.branches.length).toBeGreaterThanOrEqual(2)
-  })
-
-  it('needs the present gains of a form that has several', async () => {
-    const without = await client.post<ErrorBody>('/api/loop/analyze', { loop, controller: { form: 'pd' } })
-    expect([without.status, without.body.data?.issues?.[0]?.path]).toEqual([422, 'gains'])
-    expect((await client.post('/api/loop/analyze', { loop, controller: { form: 'pd' }, gains: { kp: 1, kd: 2 } })).status).toBe(200)
-  })
-})
-
-describe('POST /api/loop/frequency', () => {
-  const { designPoint: _, ...present } = { ...good, gains: { k: 6 } }
-
-  // 6/(s (s + 1) (s + 2)) stands on the border of stability: L(j sqrt 2) = -1 (Ogata, Example 6-1).
-  it('answers with L, S and T over frequency, under the names of docs/http-contract.md', async () => {
-    const { status, body } = await client.post<FrequencyResponse>('/api/loop/frequency', { ...present, from: Math.SQRT2, to: 10, samples: 50 })
-    expect(status).toBe(200)
-    expect(Object.keys(body).sort()).toEqual(['complementaryDb', 'frequency', 'magnitudeDb', 'phaseDeg', 'sensitivityDb', 'sensitivityPeakFrequency'])
-    const lists = [body.frequency, body.magnitudeDb, body.phaseDeg, body.sensitivityDb, body.complementaryDb]
-    expect(new Set(lists.map(list => list.length)).size).toBe(1)
-    expect(lists.flat().every(Number.isFinite)).toBe(true)
-    expect([body.frequency[0], body.frequency.at(-1)]).toEqual([Math.SQRT2, 10])
-    expect([body.magnitudeDb[0], body.phaseDeg[0]]).toEqual([expect.closeTo(0, 9), expect.closeTo(-180, 9)])
-    expect(body.sensitivityPeakFrequency).toBeNull()
-  })
-
-  it('finds the gains of a design point, and says where |S| is largest', async () => {
-    const { status, body } = await client.post<FrequencyResponse>('/api/loop/frequency', good)
-    expect(status).toBe(200)
-    const solved = (await client.post<DesignSolution>('/api/design/solve', good)).body.readings
-    expect([body.frequency[0], body.frequency.at(-1)]).toEqual([0.1, 10])
-    expect(Math.max(...body.sensitivityDb)).toBeCloseTo(20 * Math.log10(solved.sensitivityPeak!), 3)
-    expect(body.frequency[body.sensitivityDb.indexOf(Math.max(...body.sensitivityDb))]! / body.sensitivityPeakFrequency!).toBeCloseTo(1, 1)
-  })
-
-  it.each<[string, object, number, string]>([
-    ['an unknown field', { colour: 'red' }, 400, 'colour'],
-    ['a range that ends before it begins', { from: 10, to: 1 }, 400, 'to'],
-    ['an empty range', { from: 10, to: 10 }, 400, 'to'],
-    ['a frequency of 0', { from: 0 }, 400, 'from'],
-    ['a frequency beyond any machine', { to: 1e13 }, 400, 'to'],
-    ['too few samples', { samples: 19 }, 400, 'samples'],
-    ['too many samples', { samples: 2001 }, 400, 'samples'],
-    ['half a sample', { samples: 20.5 }, 400, 'samples'],
-    ['neither point nor gains', { gains: undefined }, 400, 'designPoint'],
-    ['gains of another form', { gains: { kp: 1, ki: 1 } }, 400, 'gains'],
-    ['a plant without a denominator', { loop: { plant: { form: 'coefficients', numerator: [1], denominator: [0] } } }, 400, 'loop.plant.denominator'],
-    ['a gain of zero', { gains: { k: 0 } }, 422, 'gains'],
-    ['an algebraic loop', { loop: { plant: { form: 'coefficients', numerator: [-1, 0], denominator: [1, 1] } }, gains: { k: 1 } }, 422, ''],
-  ])('%s is refused by field and reason', async (_what, fields, status, path) => {
-    const answer = await client.post<ErrorBody>('/api/loop/frequency', { ...present, ...fields })
-    expect(answer.status).toBe(status)
-    expect(answer.body.message.length).toBeGreaterThan(10)
-    if (path !== '') expect(answer.body.data?.issues?.map(issue => issue.path)).toContain(path)
-  })
-
-  it('answers at the limits: order 20, 2000 samples, poles on the axis, figures of any size', async () => {
-    const resonant = Array.from({ length: 10 }, (_, n) => ({ re: 0, im: n + 1 })).flatMap(({ re, im }) => [{ re, im }, { re, im: -im }])
-    for (const plant of [
-      { form: 'zeros-poles-gain', zeros: [], poles: resonant, gain: 1 },
-      { form: 'coefficients', numerator: [1e100], denominator: [1e-100, 1] },
-    ]) {
-      const { status, body } = await client.post<FrequencyResponse>('/api/loop/frequency', { ...present, loop: { plant }, gains: { k: 1 }, samples: 2000 })
-      expect(status).toBe(200)
-      expect([body.frequency, body.magnitudeDb, body.phaseDeg, body.sensitivityDb, body.complementaryDb].flat().every(Number.isFinite)).toBe(true)
-      expect(Math.max(...body.magnitudeDb)).toBeLessThanOrEqual(400)
-    }
-  })
-})
-
 describe('bad input', () => {
   const plant = (fields: object) => ({ ...good, loop: { plant: { ...loop.plant, ...fields } } })
   const formula = (expression: string) => ({ ...good, loop: { plant: { form: 'expression', expression, parameters: {} } } })
@@ -311,21 +200,5 @@ describe('bad input', () => {
     const text = JSON.stringify(good).replace('0.5', '1e999')
     const answer = await client.raw<ErrorBody>('POST', '/api/design/solve', text, { 'content-type': 'application/json' })
     expect([answer.status, answer.body.data?.issues?.[0]?.path]).toEqual([400, 'designPoint.dampingRatio'])
-  })
-
-  it('tells the factors on the gain for which the requirements are met', async () => {
-    // 1/(s² + 2 s): damping ratio 1/sqrt(k).
-    const zeta = Math.log(10) / Math.hypot(Math.PI, Math.log(10))
-    const { status, body } = await client.post<GainWindow>('/api/design/gain-window', {
-      loop: { plant: { form: 'coefficients', numerator: [1], denominator: [1, 2, 0] } }, controller: { form: 'gain' }, designPoint: { re: -1, im: 1 },
-      requirements: [{ reading: 'overshootPercent', limit: 'at-most', value: 10 }],
-    })
-    expect(status).toBe(200)
-    expect(body.window).toHaveLength(1)
-    expect(body.window[0]![0]).toBe(1e-3)
-    expect(Math.abs(body.window[0]![1] * 2 * zeta ** 2 - 1)).toBeLessThan(1e-6)
-    expect(body.byRequirement[0]).toMatchObject({ reading: 'overshootPercent', intervals: body.window })
-    expect(body.tightest).toEqual({ below: null, above: 'overshootPercent' })
-    expect((await client.post<ErrorBody>('/api/design/gain-window', { ...good, loop: {} })).status).toBe(400)
   })
 })

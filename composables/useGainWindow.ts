@@ -19,21 +19,25 @@ export function useGainWindow() {
   const store = useSolutionStore()
   const room = shallowRef<RoomAbout | null>(null)
   let timer: ReturnType<typeof setTimeout> | undefined
-  let asked = 0
+  let underWay: AbortController | null = null
 
   async function ask() {
     const { loop, controller, requirements } = bench.document
     const gains = store.solution?.gains
-    asked += 1
+    underWay?.abort()
     // An answer may lag behind a change of the form: its gains then belong to the form before.
-    if (!gains || !areGainsOf(controller.form, gains) || store.stale || requirements.length === 0) return void (room.value = null)
-    const number = asked
+    if (!gains || !areGainsOf(controller.form, gains) || store.stale || requirements.length === 0) {
+      underWay = null
+      room.value = null
+      return
+    }
+    const own = underWay = new AbortController()
     try {
-      const window = await askServer<GainWindow>('/api/design/gain-window', { loop, controller, gains, requirements })
-      if (number === asked) room.value = { gains, window }
+      const window = await askServer<GainWindow>('/api/design/gain-window', { loop, controller, gains, requirements }, own.signal)
+      if (own === underWay) room.value = { gains, window }
     } catch {
       // The plate says by itself when the server does not answer or has nothing to say.
-      if (number === asked) room.value = null
+      if (own === underWay) room.value = null
     }
   }
 
@@ -41,7 +45,10 @@ export function useGainWindow() {
     clearTimeout(timer)
     if (bench.gestureStart === null) timer = setTimeout(() => void ask(), pauseMs)
   }, { immediate: import.meta.client })
-  onScopeDispose(() => clearTimeout(timer))
+  onScopeDispose(() => {
+    clearTimeout(timer)
+    underWay?.abort()
+  })
 
   return { room }
 }

@@ -79,15 +79,28 @@ export function levelsOf(panel: Panel, step: number, right: ((value: number) => 
   }))
 }
 
+/** Pixels of a letter in the figures of the axes, on average. */
+const letterWidth = 6.5
+
 /** A line for every decade; figures where they have room, the unit with the last one. */
 export function decadesOf(panel: Panel): Pane['decades'] {
   const named = wholeDecades(panel.along, (panel.right - panel.left) / decadeRoom)
-  return wholeDecades(panel.along, Infinity).map((exponent) => {
+  const decades = wholeDecades(panel.along, Infinity).map((exponent): Pane['decades'][number] => {
     const x = xOf(panel, exponent)
     const atEnd = panel.right - x < unitRoom
     const figure = `${formatDecade(exponent)}${exponent === named.at(-1) ? `${gap}rad/s` : ''}`
     return { x, text: named.includes(exponent) ? figure : null, anchor: atEnd ? 'end' : 'middle' }
   })
+  return withoutTheCovered(decades)
+}
+
+/** The last figure carries the unit and may reach over the one before, which then gives way. */
+function withoutTheCovered(decades: Pane['decades']): Pane['decades'] {
+  const last = decades.findLast(({ text }) => text !== null)
+  if (!last) return decades
+  const widthOf = ({ text }: Pane['decades'][number]) => (text?.length ?? 0) * letterWidth
+  const begins = last.x - widthOf(last) * (last.anchor === 'end' ? 1 : 0.5)
+  return decades.map(decade => decade !== last && decade.x + widthOf(decade) / 2 > begins - letterWidth ? { ...decade, text: null } : decade)
 }
 
 /** The frequency at a place across a panel, kept within it. */

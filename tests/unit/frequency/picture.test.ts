@@ -4,7 +4,7 @@ import { frequencyResponse } from '#shared/control/frequency/frequency-response'
 import { closeLoop } from '#shared/control/closed-loop'
 import type { FrequencyAnswer } from '~/utils/frequency/answer'
 import { markedFrequencies, nextMark, readingsNear } from '~/utils/frequency/marks'
-import { frequencyAt, type Pane } from '~/utils/frequency/pane'
+import { decadesOf, frequencyAt, type Pane } from '~/utils/frequency/pane'
 import { drawFrequency } from '~/utils/frequency/picture'
 import { boxOf, placeWords, type Box } from '~/utils/frequency/place-words'
 import { readAt } from '~/utils/frequency/read-at'
@@ -147,5 +147,17 @@ describe('words', () => {
     expect(placeWords('9.5 dB', [first, second], free)).toBe(first)
     expect(placeWords('9.5 dB', [first, second], { ...free, boxes: [boxOf(first, '9.5 dB')] })).toBe(second)
     expect(placeWords('9.5 dB', [{ ...first, x: panel.right - 5 }, second], free)).toBe(second)
+  })
+})
+
+describe('the figures under a frequency axis', () => {
+  it('never run into each other', () => {
+    for (let width = 200; width < 700; width += 20) {
+      const panel = { left: 40, right: 40 + width, top: 0, bottom: 100, along: { min: -1, max: 4 }, value: { min: 0, max: 1 } }
+      const named = decadesOf(panel).filter(({ text }) => text !== null)
+      expect(named.at(-1)!.text).toContain('rad/s')
+      const boxes = named.map(({ x, text, anchor }) => ({ from: x - 6.5 * text!.length * (anchor === 'end' ? 1 : 0.5), to: x + 6.5 * text!.length * (anchor === 'end' ? 0 : 0.5) }))
+      for (let i = 1; i < boxes.length; i++) expect(boxes[i]!.from).toBeGreaterThan(boxes[i - 1]!.to)
+    }
   })
 })
